@@ -1,0 +1,174 @@
+/**
+ * The shape of a stored class (spec version 1). Shapes and limits only; rules that span several
+ * fields (ladders, anchors, class length) live in `problems.ts`.
+ */
+import { z } from 'zod'
+
+const whole = (min: number, max: number) => z.number().int().min(min).max(max)
+const text = (min: number, max: number) => z.string().min(min).max(max)
+/** Seconds that may have one decimal: tempo figures and change cost. */
+const tenths = (min: number, max: number) =>
+  z
+    .number()
+    .min(min)
+    .max(max)
+    .refine((value) => Math.abs(value * 10 - Math.round(value * 10)) < 1e-9, {
+      message: 'Give at most one decimal',
+    })
+
+export const BLOCK_KINDS = ['warm-up', 'work', 'finisher', 'mobility', 'rest', 'cool-down'] as const
+export const CUE_KINDS = ['form', 'breath', 'pace', 'safety', 'option', 'kit', 'next'] as const
+export const SIDES = ['together', 'alternate', 'each'] as const
+
+export const idSchema = z.string().regex(/^[a-z0-9-]{1,40}$/)
+export const slugSchema = z.string().regex(/^[a-z0-9-]{1,60}$/)
+export const sidesSchema = z.enum(SIDES)
+
+/** Seconds eccentric, bottom, concentric, top: the trade's four figures. */
+export const tempoSchema = z.tuple([tenths(0, 60), tenths(0, 60), tenths(0, 60), tenths(0, 60)])
+export const changeSchema = tenths(0, 600)
+
+const repCount = whole(1, 500)
+export const ladderSchema = z.strictObject({
+  from: repCount,
+  step: whole(-500, 500),
+  to: repCount.optional(),
+  then: z.enum(['hold', 'repeat', 'done']).optional(),
+})
+export const repListSchema = z.strictObject({
+  list: z.array(repCount).min(1).max(40),
+  then: z.enum(['hold', 'repeat', 'done']).optional(),
+})
+export const repsSchema = z.union([repCount, ladderSchema, repListSchema])
+
+const optionUseSchema = z.strictObject({
+  option: slugSchema,
+  reps: repsSchema.optional(),
+  sides: sidesSchema.optional(),
+})
+
+const noteSchema = text(1, 80).optional()
+const optionUsesSchema = z.array(optionUseSchema).optional()
+
+export const stationSchema = z.strictObject({
+  movement: slugSchema,
+  reps: repsSchema,
+  sides: sidesSchema.optional(),
+  tempo: tempoSchema.optional(),
+  change: changeSchema.optional(),
+  note: noteSchema,
+  options: optionUsesSchema,
+})
+export const intervalStationSchema = z.strictObject({
+  movement: slugSchema,
+  work: whole(1, 10_800),
+  rest: whole(0, 3_600),
+  sides: sidesSchema.optional(),
+  switch: whole(0, 3_600).optional(),
+  note: noteSchema,
+  options: optionUsesSchema,
+})
+export const holdStationSchema = z.strictObject({
+  movement: slugSchema,
+  seconds: whole(1, 10_800),
+  sides: sidesSchema.optional(),
+  switch: whole(0, 3_600).optional(),
+  rest: whole(0, 3_600).optional(),
+  note: noteSchema,
+  options: optionUsesSchema,
+})
+
+const stations = <T extends z.ZodType>(station: T) => z.array(station).min(1).max(12)
+
+export const formatSchema = z.discriminatedUnion('type', [
+  z.strictObject({
+    type: z.literal('rounds'),
+    seconds: whole(1, 10_800),
+    counted: z.boolean().optional(),
+    stations: stations(stationSchema),
+  }),
+  z.strictObject({
+    type: z.literal('for-time'),
+    rounds: whole(1, 100),
+    cap: whole(1, 10_800),
+    stations: stations(stationSchema),
+  }),
+  z.strictObject({
+    type: z.literal('intervals'),
+    rounds: whole(1, 100),
+    stations: stations(intervalStationSchema),
+    roundRest: whole(0, 3_600).optional(),
+  }),
+  z.strictObject({
+    type: z.literal('every'),
+    seconds: whole(1, 10_800),
+    times: whole(1, 180),
+    stations: stations(stationSchema),
+  }),
+  z.strictObject({ type: z.literal('holds'), stations: stations(holdStationSchema) }),
+  z.strictObject({
+    type: z.literal('rest'),
+    seconds: whole(1, 3_600),
+    atLeast: whole(0, 3_600).optional(),
+    atMost: whole(0, 3_600).optional(),
+  }),
+])
+
+export const anchorSchema = z.union([
+  z.strictObject({ from: z.enum(['start', 'end']), s: whole(0, 10_800) }),
+  z.strictObject({ round: whole(1, 10_000) }),
+  z.strictObject({ station: whole(0, 11), round: whole(1, 10_000).optional() }),
+])
+
+export const cueSchema = z.strictObject({
+  id: idSchema,
+  text: text(1, 80),
+  spoken: text(1, 200).optional(),
+  kind: z.enum(CUE_KINDS),
+  say: z.boolean().optional(),
+  show: z.strictObject({ station: whole(0, 11), option: slugSchema.optional() }).optional(),
+  at: anchorSchema,
+})
+
+export const blockSchema = z.strictObject({
+  id: idSchema,
+  kind: z.enum(BLOCK_KINDS),
+  title: text(1, 80),
+  brief: text(1, 400).optional(),
+  briefSeconds: whole(0, 300).optional(),
+  countIn: whole(0, 15).optional(),
+  format: formatSchema,
+  cues: z.array(cueSchema).max(60).optional(),
+})
+
+export const kitItemSchema = z.strictObject({
+  item: text(1, 60),
+  count: whole(1, 100),
+  optional: z.boolean().optional(),
+})
+
+export const sessionSpecSchema = z.strictObject({
+  spec: z.literal(1),
+  title: text(1, 80),
+  focus: text(1, 120).optional(),
+  intendedRpe: z.number().min(0).max(10).optional(),
+  kit: z.array(kitItemSchema).max(20).optional(),
+  blocks: z.array(blockSchema).min(1).max(40),
+})
+
+export type SessionSpec = z.infer<typeof sessionSpecSchema>
+export type Block = z.infer<typeof blockSchema>
+export type BlockKind = Block['kind']
+export type Format = z.infer<typeof formatSchema>
+export type FormatType = Format['type']
+export type Station = z.infer<typeof stationSchema>
+export type IntervalStation = z.infer<typeof intervalStationSchema>
+export type HoldStation = z.infer<typeof holdStationSchema>
+export type AnyStation = Station | IntervalStation | HoldStation
+export type Reps = z.infer<typeof repsSchema>
+export type Sides = z.infer<typeof sidesSchema>
+export type Tempo = z.infer<typeof tempoSchema>
+export type Cue = z.infer<typeof cueSchema>
+export type CueKind = Cue['kind']
+export type Anchor = z.infer<typeof anchorSchema>
+export type KitItem = z.infer<typeof kitItemSchema>
