@@ -24,7 +24,12 @@ export type Command =
       type: 'start'
       versionId: string
       counting: Counting
-      options: { block: string; station: number; option: string; from: 'fitted' | 'chosen' | 'coach' }[]
+      options: {
+        block: string
+        station: number
+        option: string
+        from: 'fitted' | 'chosen' | 'coach'
+      }[]
     }
   | { type: 'pause' }
   /** After a pause or a gap: from where the member was, or from where the clock would be by now. */
@@ -60,10 +65,54 @@ export type Effect = { type: 'sound'; sound: 'logged' | 'start' } | { type: 'say
 
 export interface Applied {
   run: Run
+  /** To be stamped and stored in this order. */
   events: EventDraft[]
   effects: Effect[]
-  /** Set where nothing was done, with a sentence for the member ('Round 4 logged a second ago…'). */
+  /** Set where nothing was done, with a sentence for the member ('Round 4 was logged a second ago…'). */
   refused: string | null
+}
+
+/** Where in the class somebody is. */
+export interface Place {
+  /** Index into `run.timeline.segments`; their number where the class is over. */
+  segment: number
+  classMs: number
+  /** Into a brief, which has no length in class time; 0 elsewhere. */
+  briefElapsedMs: number
+  /** Only in `Position.place`: class time at which a rest as needed began that is still going on. */
+  restingSinceMs?: number
+}
+
+/** How a segment differs from the compiled one. */
+export interface SegmentEdit {
+  lengthenedMs: number
+  cutMs: number
+  /** Length at which it was left, by a skip or an early finish of its block; null where it was not. */
+  leftAtMs: number | null
+}
+
+/** Where the body of a block lies in the edited class. */
+export interface BlockSpan {
+  /** Index of its first and last segment of any kind, and of the first of its body. */
+  firstSegment: number
+  lastSegment: number
+  bodySegment: number
+  bodyStartMs: number
+  bodyEndMs: number
+}
+
+/** The compiled class with what the member has changed. Segments keep their indexes; those that are gone have no length. */
+export interface RunTimeline extends Timeline {
+  marks: PlacedMark[]
+  /** One per block of the spec. */
+  blocks: BlockSpan[]
+}
+
+export interface RunBlock {
+  /** Rounds done, with the class time at which each was logged; in order of round. */
+  logged: { round: number; classMs: number }[]
+  /** Option in force, by station. */
+  options: string[]
 }
 
 /** Opaque to the rim, plain data (survives structured clone into IndexedDB). */
@@ -74,31 +123,29 @@ export interface Run {
   /** As compiled. */
   base: Timeline
   /** With rests lengthened and cut, blocks skipped or finished early, more time to change. */
-  timeline: Timeline
-  facts: Fact[]
+  timeline: RunTimeline
+  /** By segment. */
+  edits: (SegmentEdit | null)[]
+  /** The last dated fact: at `atMs` the member was at `place`. Null before class. The class runs from there unless halted. */
+  clock: { atMs: number; place: Place } | null
+  halted: 'paused' | 'stopped' | null
+  /** A red-flag sign was given: going on is not offered in this class. */
+  redFlag: boolean
+  /** `end-class` was given. */
+  ended: boolean
+  /** Rest as needed in progress, since this class time. */
+  resting: { segment: number; sinceClassMs: number } | null
+  blocks: RunBlock[]
+  /** For the guard against a double press, on the clock of `now`. */
+  lastLogged: { block: string; round: number; atMs: number } | null
 }
-
-export type Fact =
-  | { type: 'started'; atMs: number }
-  | { type: 'paused'; atMs: number }
-  /** The clock goes on at `classMs`, `briefElapsedMs` into a brief if it stands in one. */
-  | { type: 'resumed'; atMs: number; segment: number; classMs: number; briefElapsedMs: number }
-  | { type: 'brief-passed'; atMs: number; segment: number }
-  | { type: 'stretched'; segment: number; ms: number }
-  /** The segment ends at this class time; those of the same block after it are gone. */
-  | { type: 'cut-off'; segment: number; atClassMs: number; wholeBlock: boolean }
-  | { type: 'resting'; atMs: number }
-  | { type: 'rested'; atMs: number }
-  | { type: 'logged'; atMs: number; block: string; round: number }
-  | { type: 'unlogged'; atMs: number; block: string; round: number }
-  | { type: 'chose'; block: string; station: number; option: string; from: 'fitted' | 'chosen' | 'coach' }
-  | { type: 'stopped'; atMs: number; redFlag: boolean }
-  | { type: 'ended'; atMs: number }
 
 export interface Position {
   /** `over`: the last segment ran out, or the class was ended. */
   phase: 'ready' | 'brief' | 'segment' | 'over'
   halted: 'paused' | 'stopped' | null
+  /** Going on after the stop is not offered. */
+  redFlag: boolean
   classMs: number
   /** Index into `run.timeline.segments`; -1 before class. */
   segmentIndex: number
@@ -107,12 +154,12 @@ export interface Position {
   leftMs: number
   /** In a brief; null while it waits for the member. */
   briefLeftMs: number | null
-  /** Index into spec.blocks; -1 before class. */
+  /** Index into spec.blocks; -1 before class; the last block where the class is over. */
   blockIndex: number
   /** Into and before the end of the block's body; 0 where the body has not begun. */
   bodyElapsedMs: number
   bodyLeftMs: number
-  /** Member's own place in `rounds` and `for-time`: the round being worked on, from 1; null elsewhere. */
+  /** Member's own place in `rounds` and `for-time`: the lowest round not done, from 1; null elsewhere. */
   round: number | null
   /** A `done` ladder has run out, or `for-time` rounds are all done: the screen shows rest, the member may go on. */
   workedOff: boolean
@@ -120,7 +167,25 @@ export interface Position {
   restingMs: number | null
   /** In a rest: when it may be cut ('go'), and how far it may still be lengthened. */
   rest: { mayCutInMs: number; mayLengthenMs: number } | null
+  /** To be kept by the rim as the sign of life, with the computer's time, about every second and with every event. */
+  place: Place | null
+  /** A command that is due by itself (a rest as needed that its segment ended, the natural end): the rim sends it at once. */
+  owed: { type: 'end-rest-as-needed' } | { type: 'end-class' } | null
 }
+
+/** The last that is known of a run before a reload. */
+export interface SignOfLife {
+  /** How long ago, in milliseconds. Negative or not a number (the computer's clock was changed): taken as a long gap. */
+  agoMs: number
+  /** From `Position.place`; null where only the events are known, as on another device. */
+  place: Place | null
+}
+
+/** A gap up to this long runs on as if nothing had been (session-spec.md, Gaps). */
+export const GAP_MS = 30_000
 
 /** A mark with a key that stays the same however the timeline is edited, so that none sounds twice. */
 export type PlacedMark = Mark & { key: string; segmentIndex: number }
+
+/** A mark and the instant, on the clock of `now`, at which it falls due. */
+export type DueMark = PlacedMark & { dueAtMs: number }
