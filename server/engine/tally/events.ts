@@ -3,7 +3,11 @@ import { z } from 'zod'
 import { idSchema, slugSchema } from '../spec/schema'
 import { REASONS } from '../spec/movement'
 
-const ms = z.number().int().min(0).max(1_000 * 60 * 60 * 24 * 7)
+const ms = z
+  .number()
+  .int()
+  .min(0)
+  .max(1_000 * 60 * 60 * 24 * 7)
 const round = z.number().int().min(1).max(1_000_000)
 const station = z.number().int().min(0).max(1_000_000)
 const note = z.string().max(1_000).optional()
@@ -85,12 +89,19 @@ export const eventSchema = z.discriminatedUnion('type', [
     where: z.enum(HURT_PLACES),
     note,
   }),
-  event('stopped', { sign: z.enum(STOP_SIGNS).optional(), where: z.string().max(60).optional(), note }),
+  event('stopped', {
+    sign: z.enum(STOP_SIGNS).optional(),
+    where: z.string().max(60).optional(),
+    note,
+  }),
   event('finished', {}),
   event('rated', {
     rpe: z.number().min(0).max(10),
     note,
-    hurts: z.array(z.strictObject({ where: z.enum(HURT_PLACES), note })).max(20).optional(),
+    hurts: z
+      .array(z.strictObject({ where: z.enum(HURT_PLACES), note }))
+      .max(20)
+      .optional(),
   }),
 ])
 

@@ -1,5 +1,5 @@
 /** What a member has done, folded from events. */
-import type { FormatType, Sides } from '../spec/schema'
+import type { FormatType } from '../spec/schema'
 import type { CountedBy, Counting, HurtPlace, StopSign } from './events'
 
 export interface LoggedRound {
@@ -29,11 +29,18 @@ export interface BlockTally {
   totalReps: number
   /** The rounds done, in order of round. */
   logged: LoggedRound[]
-  /** Milliseconds into the body at which a `for-time` block, or a `done` ladder, was worked off. */
+  /**
+   * Milliseconds into the body at which a `for-time` block, or a `done` ladder, was worked off; null
+   * where one of its rounds was taken back later.
+   */
   finishMs: number | null
-  /** Timed pieces (`intervals`, `every`, `holds`): how many ran out unskipped, and how many of those with a rest inside. */
+  /**
+   * Timed pieces (`intervals`, `every`, `holds`; each side is one): `done` ran out unskipped, `partDone`
+   * ran out with a rest as needed inside and are not among the done.
+   */
   pieces: { done: number; partDone: number; of: number } | null
   skipped: { reason: string | null } | null
+  /** Rest beyond plan: as needed inside work, and by which rests (not count-ins or switches) were lengthened. */
   restTakenMs: number
   restLengthenedMs: number
   restCutMs: number
@@ -62,8 +69,16 @@ export interface AttemptTally {
   classMs: number
   blocks: BlockTally[]
   hurts: Hurt[]
-  stop: { sign: StopSign | null; where: string | null; note: string | null; redFlag: boolean; classMs: number } | null
-  rating: { rpe: number; note: string | null; hurts: { where: HurtPlace; note: string | null }[] } | null
+  stop: {
+    sign: StopSign | null
+    where: string | null
+    note: string | null
+    redFlag: boolean
+    classMs: number
+  } | null
+  rating: {
+    rpe: number
+    note: string | null
+    hurts: { where: HurtPlace; note: string | null }[]
+  } | null
 }
-
-export type { Sides }

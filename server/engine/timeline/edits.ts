@@ -74,38 +74,60 @@ export function withEdit(
   edits: Edits,
   event: EditEvent,
 ): Edits {
+  const next = edits.slice()
+  return edit(spec, base, next, event) ? next : edits
+}
+
+/** As `withEdit`, in place; false where the event changes nothing. For folds over many events. */
+export function edit(
+  spec: SessionSpec,
+  base: readonly Segment[],
+  edits: Edits,
+  event: EditEvent,
+): boolean {
   if (event.type === 'rest-lengthened' || event.type === 'rest-cut') {
     const segment = base[event.segment]
-    if (!segment || segment.kind === 'brief' || segment.kind === 'work') return edits
-    if (segment.block !== event.block || !(event.ms > 0)) return edits
-    const next = edits.slice()
+    if (!segment || segment.kind === 'brief' || segment.kind === 'work') return false
+    if (segment.block !== event.block || !(event.ms > 0) || !Number.isFinite(event.ms)) return false
     const before = edits[event.segment] ?? NO_EDIT
-    next[event.segment] =
+    edits[event.segment] =
       event.type === 'rest-lengthened'
         ? {
             ...before,
             lengthenedMs: Math.min(MOST_LENGTHENED_MS, before.lengthenedMs + event.ms),
           }
         : { ...before, cutMs: before.cutMs + event.ms }
-    return next
+    return true
   }
+  return leaveBlock(spec, base, edits, event)
+}
+
+function leaveBlock(
+  spec: SessionSpec,
+  base: readonly Segment[],
+  edits: Edits,
+  event: Extract<EditEvent, { type: 'block-skipped' | 'block-finished' }>,
+): boolean {
   const blockIndex = spec.blocks.findIndex((block) => block.id === event.block)
+  const wasLeft = base.some(
+    (segment, index) => segment.block === event.block && (edits[index]?.leftAtMs ?? null) !== null,
+  )
+  if (blockIndex < 0 || wasLeft) return false
   const segments = editedSegments(base, edits)
   const span = blockSpans(spec, segments)[blockIndex]
-  if (!span) return edits
+  if (!span) return false
   const leaveMs =
     event.type === 'block-skipped' ? event.classMs : span.bodyStartMs + Math.max(0, event.ms)
-  if (!Number.isFinite(leaveMs)) return edits
-  const next = edits.slice()
+  if (!Number.isFinite(leaveMs)) return false
   let changed = false
   for (let index = span.firstSegment; index <= span.lastSegment; index += 1) {
     const segment = segments[index]
-    if (!segment || segment.kind === 'brief') continue
-    const before = edits[index] ?? NO_EDIT
-    if (before.leftAtMs !== null) return edits
-    if (segment.endMs <= leaveMs) continue
-    next[index] = { ...before, leftAtMs: Math.max(0, leaveMs - segment.startMs) }
+    if (!segment || segment.kind === 'brief' || segment.endMs <= leaveMs) continue
+    edits[index] = {
+      ...(edits[index] ?? NO_EDIT),
+      leftAtMs: Math.max(0, leaveMs - segment.startMs),
+    }
     changed = true
   }
-  return changed ? next : edits
+  return changed
 }
