@@ -1,0 +1,16 @@
+import { CORE_MOBILITY } from './data/core-mobility'
+import { HINGE } from './data/hinge'
+import { PUSH_PULL } from './data/push-pull'
+import { SQUAT_LUNGE } from './data/squat-lunge'
+import { WARM_UP } from './data/warm-up'
+import type { FigureSlug } from './slugs'
+import type { FigureData } from './types'
+
+/** Every figure as data. */
+export const FIGURES: Record<FigureSlug, FigureData> = {
+  ...WARM_UP,
+  ...SQUAT_LUNGE,
+  ...HINGE,
+  ...PUSH_PULL,
+  ...CORE_MOBILITY,
+}
