@@ -30,6 +30,8 @@ export interface BoardForecast {
 
 export interface BoardDto {
   scheduledClass: ScheduledClassSummary
+  /** IANA name of the gym's zone: times of day are in it. */
+  timeZone: string
   versionId: string
   version: PublishedVersion
   /** Forecast of every `rounds` and `for-time` block, 'expected' tiring. */

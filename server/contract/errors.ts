@@ -37,5 +37,4 @@ export interface ErrorBody {
 
 /** What a form's action gives back; typed text never travels back, the form keeps it. */
 export type ActionResult<T = undefined> =
-  | { ok: true; value: T }
-  | { ok: false; message: string; fields?: Record<string, string> }
+  { ok: true; value: T } | { ok: false; message: string; fields?: Record<string, string> }

@@ -1,0 +1,43 @@
+import { RungCell, type CellRung } from '@/components/lane/rung-cell'
+import type { BoardDto } from '@/server/contract/board'
+import { blockPlan, roundReps } from '@/server/engine/pace/block-plan'
+import type { Block } from '@/server/engine/spec/schema'
+import { clockText } from '@/server/engine/tally/score'
+import type { BlockShape } from './block-shapes'
+
+interface ForecastCellProps {
+  dto: BoardDto
+  block: Block
+  shape: BlockShape | undefined
+}
+
+/** What the class said would be done: open rungs, the last dashed, and the score. */
+export function ForecastCell({ dto, block, shape }: ForecastCellProps) {
+  const forecast = dto.forecast.find((one) => one.block === block.id)
+  const plan = blockPlan(dto.version, block)
+  if (!forecast || !plan || !shape) return null
+  const rounds = Math.min(forecast.rounds + (forecast.reps > 0 ? 1 : 0), 60)
+  const endMs = forecast.finishMs ?? shape.lengthMs
+  const rungs: CellRung[] = Array.from({ length: rounds }, (_, index) => ({
+    atMs: ((index + 1) * endMs) / (rounds + 0.5),
+    reps: roundReps(plan, index + 1) / Math.max(1, plan.stations.length),
+    state: index === rounds - 1 ? 'forecast-last' : 'coming',
+  }))
+  const score =
+    forecast.finishMs !== null
+      ? clockText(forecast.finishMs)
+      : `${forecast.rounds} + ${forecast.reps}`
+  return (
+    <div className="flex items-center gap-2">
+      <RungCell
+        className="h-9 min-w-16 flex-1"
+        lengthMs={shape.lengthMs}
+        rungs={rungs}
+        wedge={shape.wedge}
+        longestReps={shape.longestReps}
+        label={`Forecast ${score}`}
+      />
+      <span className="font-display text-[0.95rem] tabular-nums">{score}</span>
+    </div>
+  )
+}
