@@ -6,7 +6,9 @@ import { instant } from './columns'
 export const attemptEvents = pgTable(
   'attempt_events',
   {
-    attemptId: text('attempt_id').notNull().references(() => attempts.id, { onDelete: 'cascade' }),
+    attemptId: text('attempt_id')
+      .notNull()
+      .references(() => attempts.id, { onDelete: 'cascade' }),
     id: text('id').notNull(),
     seq: bigint('seq', { mode: 'number' }).notNull(),
     content: jsonb('content').$type<ClassEvent>().notNull(),

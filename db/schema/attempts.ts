@@ -1,5 +1,6 @@
 import { bigint, boolean, index, pgTable, text } from 'drizzle-orm/pg-core'
 import { classVersions } from './class-versions'
+import type { AttemptState } from '@/server/engine/tally/types'
 import { createdAt, id, instant } from './columns'
 import { gyms } from './gyms'
 import { memberships } from './memberships'
@@ -10,10 +11,18 @@ export const attempts = pgTable(
   'attempts',
   {
     id: id(),
-    gymId: text('gym_id').notNull().references(() => gyms.id, { onDelete: 'cascade' }),
-    membershipId: text('membership_id').notNull().references(() => memberships.id, { onDelete: 'cascade' }),
-    scheduledClassId: text('scheduled_class_id').notNull().references(() => scheduledClasses.id, { onDelete: 'cascade' }),
-    versionId: text('version_id').notNull().references(() => classVersions.id),
+    gymId: text('gym_id')
+      .notNull()
+      .references(() => gyms.id, { onDelete: 'cascade' }),
+    membershipId: text('membership_id')
+      .notNull()
+      .references(() => memberships.id, { onDelete: 'cascade' }),
+    scheduledClassId: text('scheduled_class_id')
+      .notNull()
+      .references(() => scheduledClasses.id, { onDelete: 'cascade' }),
+    versionId: text('version_id')
+      .notNull()
+      .references(() => classVersions.id),
     /** Started after the window had closed. */
     late: boolean('late').notNull().default(false),
     /** Answer to 'anything new today?'; health data. Null: nothing new. */
@@ -22,7 +31,10 @@ export const attempts = pgTable(
     startedAt: instant('started_at'),
     finishedAt: instant('finished_at'),
     lastEventAt: instant('last_event_at'),
-    /** Grows with every change of this attempt; live pages catch up from it. */
+    /** As the last event that changes it says; `state_seq` is that event's. */
+    state: text('state').$type<AttemptState>().notNull().default('not-started'),
+    stateSeq: bigint('state_seq', { mode: 'number' }).notNull().default(-1),
+    /** How many events are stored: the revision of a board is their sum. */
     revision: bigint('revision', { mode: 'number' }).notNull().default(0),
     createdAt: createdAt(),
   },

@@ -9,7 +9,9 @@ export const classVersions = pgTable(
   'class_versions',
   {
     id: id(),
-    gymId: text('gym_id').notNull().references(() => gyms.id, { onDelete: 'cascade' }),
+    gymId: text('gym_id')
+      .notNull()
+      .references(() => gyms.id, { onDelete: 'cascade' }),
     /** The class that this is a version of; versions of one class share it. */
     classId: text('class_id').notNull(),
     content: jsonb('content').$type<PublishedVersion>().notNull(),

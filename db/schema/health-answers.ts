@@ -8,7 +8,9 @@ export const healthAnswers = pgTable(
   'health_answers',
   {
     id: id(),
-    membershipId: text('membership_id').notNull().references(() => memberships.id, { onDelete: 'cascade' }),
+    membershipId: text('membership_id')
+      .notNull()
+      .references(() => memberships.id, { onDelete: 'cascade' }),
     answers: jsonb('answers').$type<HealthAnswers>().notNull(),
     /** When the member stated that a licensed professional has cleared them. */
     clearedAt: instant('cleared_at'),

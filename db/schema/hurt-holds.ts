@@ -9,7 +9,9 @@ export const hurtHolds = pgTable(
   {
     /** The id of the event that raised it. */
     id: id(),
-    membershipId: text('membership_id').notNull().references(() => memberships.id, { onDelete: 'cascade' }),
+    membershipId: text('membership_id')
+      .notNull()
+      .references(() => memberships.id, { onDelete: 'cascade' }),
     attemptId: text('attempt_id').references(() => attempts.id, { onDelete: 'set null' }),
     place: text('place').notNull(),
     memberClearedAt: instant('member_cleared_at'),

@@ -10,8 +10,12 @@ export const memberships = pgTable(
   'memberships',
   {
     id: id(),
-    gymId: text('gym_id').notNull().references(() => gyms.id, { onDelete: 'cascade' }),
-    personId: text('person_id').notNull().references(() => people.id, { onDelete: 'cascade' }),
+    gymId: text('gym_id')
+      .notNull()
+      .references(() => gyms.id, { onDelete: 'cascade' }),
+    personId: text('person_id')
+      .notNull()
+      .references(() => people.id, { onDelete: 'cascade' }),
     roles: jsonb('roles').$type<Role[]>().notNull(),
     /** A name for a set of members who share classes ('Evening group'). */
     group: text('group_name'),

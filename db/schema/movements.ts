@@ -8,7 +8,9 @@ export const movements = pgTable(
   'movements',
   {
     id: id(),
-    gymId: text('gym_id').notNull().references(() => gyms.id, { onDelete: 'cascade' }),
+    gymId: text('gym_id')
+      .notNull()
+      .references(() => gyms.id, { onDelete: 'cascade' }),
     slug: text('slug').notNull(),
     content: jsonb('content').$type<Movement>().notNull(),
     archivedAt: instant('archived_at'),

@@ -9,8 +9,12 @@ export const scheduledClasses = pgTable(
   'scheduled_classes',
   {
     id: id(),
-    gymId: text('gym_id').notNull().references(() => gyms.id, { onDelete: 'cascade' }),
-    versionId: text('version_id').notNull().references(() => classVersions.id),
+    gymId: text('gym_id')
+      .notNull()
+      .references(() => gyms.id, { onDelete: 'cascade' }),
+    versionId: text('version_id')
+      .notNull()
+      .references(() => classVersions.id),
     /** The gym's local date, yyyy-mm-dd. */
     day: date('day', { mode: 'string' }).notNull(),
     opensAt: instant('opens_at').notNull(),

@@ -8,7 +8,9 @@ export const signInSessions = pgTable(
   'sign_in_sessions',
   {
     id: text('id').primaryKey(),
-    userId: text('user_id').notNull().references(() => people.id, { onDelete: 'cascade' }),
+    userId: text('user_id')
+      .notNull()
+      .references(() => people.id, { onDelete: 'cascade' }),
     expiresAt: instant('expires_at').notNull(),
     /** Nothing lengthens a session beyond this. */
     absoluteExpiresAt: instant('absolute_expires_at').notNull(),

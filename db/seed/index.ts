@@ -10,6 +10,7 @@ import { HEALTH_QUESTIONS, type HealthAnswers } from '@/server/engine/fit/screen
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import type { SessionSpec } from '@/server/engine/spec/schema'
 import type { ClassEvent } from '@/server/engine/tally/events'
+import { fold } from '@/server/engine/tally/fold'
 import { attemptEvents } from '../schema/attempt-events'
 import { attempts } from '../schema/attempts'
 import { auditEntries } from '../schema/audit-entries'
@@ -94,15 +95,13 @@ export async function seedDemoGym(
     const seeded: SeededMember[] = []
     for (const staff of demoStaff) {
       const personId = newId(founded)
-      await tx
-        .insert(people)
-        .values({
-          id: personId,
-          email: staff.email,
-          name: staff.name,
-          passwordHash,
-          createdAt: founded,
-        })
+      await tx.insert(people).values({
+        id: personId,
+        email: staff.email,
+        name: staff.name,
+        passwordHash,
+        createdAt: founded,
+      })
       await tx.insert(memberships).values({
         id: newId(founded),
         gymId,
@@ -118,41 +117,35 @@ export async function seedDemoGym(
       const joined = new Date(now.getTime() - random.between(70, 190) * DAY_MS)
       const personId = newId(joined)
       const membershipId = newId(joined)
-      await tx
-        .insert(people)
-        .values({
-          id: personId,
-          email: member.email,
-          name: member.name,
-          passwordHash,
-          createdAt: joined,
-        })
-      await tx
-        .insert(memberships)
-        .values({
-          id: membershipId,
-          gymId,
-          personId,
-          roles: ['member'],
-          group: member.group,
-          kit: member.kit,
-          createdAt: joined,
-        })
+      await tx.insert(people).values({
+        id: personId,
+        email: member.email,
+        name: member.name,
+        passwordHash,
+        createdAt: joined,
+      })
+      await tx.insert(memberships).values({
+        id: membershipId,
+        gymId,
+        personId,
+        roles: ['member'],
+        group: member.group,
+        kit: member.kit,
+        createdAt: joined,
+      })
       await insertHealth(tx, member, membershipId, now, random)
       seeded.push({ member, membershipId })
     }
 
-    await tx
-      .insert(movements)
-      .values(
-        demoMovements.map((content) => ({
-          id: newId(founded),
-          gymId,
-          slug: content.slug,
-          content,
-          createdAt: founded,
-        })),
-      )
+    await tx.insert(movements).values(
+      demoMovements.map((content) => ({
+        id: newId(founded),
+        gymId,
+        slug: content.slug,
+        content,
+        createdAt: founded,
+      })),
+    )
 
     const versions = new Map<DemoClass, { versionId: string; version: PublishedVersion }>()
     const published = new Date(now.getTime() - (WEEKS_BEHIND * 7 + 2) * DAY_MS)
@@ -228,6 +221,8 @@ export async function seedDemoGym(
             finishedAt: finished ? new Date(finished.wallMs) : null,
             lastEventAt: new Date(last.wallMs),
             revision: events.length,
+            state: fold(published.version, events).state,
+            stateSeq: last.seq,
             createdAt: run.startedAt,
           })
           for (const event of events) {
