@@ -1,8 +1,8 @@
 /** What one round of a block asks for: reps, their time and the changes, by station. */
-import type { Movement, MovementOption } from '../spec/movement'
+import { AS_PLANNED, type Movement, type MovementOption } from '../spec/movement'
 import { optionsOf } from '../spec/options'
 import { repsInRound, rungCount } from '../spec/reps'
-import type { AnyStation, Block, Reps, Sides, Station, Tempo } from '../spec/schema'
+import type { Block, Reps, Sides, Station, Tempo } from '../spec/schema'
 import type { PublishedVersion } from '../spec/version'
 
 export const DEFAULT_SECONDS_PER_REP = 3
@@ -49,14 +49,18 @@ export function blockPlan(
   const stations = format.stations.map((station, index) =>
     stationPlan(version, station, options[index], defaults),
   )
-  return format.type === 'for-time'
-    ? { block: block.id, seconds: format.cap, roundLimit: format.rounds, stations }
-    : { block: block.id, seconds: format.seconds, roundLimit: rungLimit(format.stations), stations }
+  const seconds = format.type === 'for-time' ? format.cap : format.seconds
+  return { block: block.id, seconds, roundLimit: roundLimit(block) ?? Infinity, stations }
 }
 
-/** How many rounds the planned ladders allow: the fewest rungs of those that end with `done`. */
-export function rungLimit(stations: readonly Station[]): number {
-  return Math.min(...stations.map((station) => endsAfter(station.reps)))
+/**
+ * How many rounds can come: those of `for-time`; in `rounds` the fewest rungs of the planned ladders
+ * that end with `done`, else Infinity. Null for every other format.
+ */
+export function roundLimit({ format }: Block): number | null {
+  if (format.type === 'for-time') return format.rounds
+  if (format.type !== 'rounds') return null
+  return Math.min(...format.stations.map((station) => endsAfter(station.reps)))
 }
 
 function endsAfter(reps: Reps): number {
@@ -71,9 +75,12 @@ function stationPlan(
   defaults: PaceDefaults,
 ): StationPlan {
   const movement = version.movements.find((one) => one.slug === station.movement)
-  const option = optionInForce(station, movement, optionSlug)
-  const reps = option?.reps ?? station.reps
-  const sides: Sides = option?.sides ?? station.sides ?? 'together'
+  const slug = optionSlug ?? AS_PLANNED
+  const option = optionsOf(station, movement).find((one) => one.option === slug)
+  // What is planned is the station's own word; the library's 'as planned' adds only its time.
+  const own = slug === AS_PLANNED ? undefined : option
+  const reps = own?.reps ?? station.reps
+  const sides: Sides = own?.sides ?? station.sides ?? 'together'
   const factor = sides === 'each' ? 2 : 1
   return {
     movement: station.movement,
@@ -86,16 +93,6 @@ function stationPlan(
       defaults.changeSeconds ??
       DEFAULT_CHANGE_SECONDS,
   }
-}
-
-function optionInForce(
-  station: AnyStation,
-  movement: Movement | undefined,
-  slug: string | undefined,
-): MovementOption | undefined {
-  return slug === undefined
-    ? undefined
-    : optionsOf(station, movement).find((one) => one.option === slug)
 }
 
 function tempoSeconds(tempo: Tempo | undefined): number | undefined {

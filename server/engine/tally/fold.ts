@@ -5,7 +5,7 @@ import { AS_PLANNED } from '../spec/movement'
 import { optionsOf } from '../spec/options'
 import type { Block } from '../spec/schema'
 import type { PublishedVersion } from '../spec/version'
-import { compile } from '../timeline/compile'
+import { segmentsOf } from '../timeline/compile'
 import { blockSpans, edit, editedSegments, type Edits } from '../timeline/edits'
 import type { BlockSpan } from '../timeline/run-types'
 import type { Segment } from '../timeline/types'
@@ -77,7 +77,7 @@ export function fold(
   const folding: Folding = {
     version,
     options,
-    base: compile(version).segments,
+    base: segmentsOf(version.spec),
     edits: [],
     blocks,
     byId: new Map(blocks.map((one) => [one.block.id, one])),

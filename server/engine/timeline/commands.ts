@@ -83,12 +83,14 @@ export function carryOut(
     }
     case 'hurt': {
       if (!HURT_PLACES.some((one) => one === command.where)) return 'Say where it hurts.'
+      // After class the place in it says nothing about where it began to hurt.
+      const inClass = position.phase !== 'over'
       const station = segment?.station ?? (hasOneStation(run, position) ? 0 : undefined)
       emit(step, {
         type: 'hurt',
         classMs,
-        ...(blockId === undefined ? {} : { block: blockId }),
-        ...(station === undefined ? {} : { station }),
+        ...(blockId === undefined || !inClass ? {} : { block: blockId }),
+        ...(station === undefined || !inClass ? {} : { station }),
         where: command.where,
         ...(command.note ? { note: command.note } : {}),
       })

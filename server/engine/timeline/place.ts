@@ -1,5 +1,5 @@
 /** Where a member is in a class: the place at an instant, and what it means. */
-import { blockPlan, type BlockPlan } from '../pace/block-plan'
+import { blockPlan, roundLimit, type BlockPlan } from '../pace/block-plan'
 import type { Block } from '../spec/schema'
 import { briefMs } from './compile'
 import type { Place, Position, Run } from './run-types'
@@ -95,13 +95,12 @@ export function describe(run: Run, place: Place | null): Position {
       ? run.version.spec.blocks.findIndex((block) => block.id === segment.block)
       : run.version.spec.blocks.length - 1
   const span = blocks[blockIndex]
-  const format = run.version.spec.blocks[blockIndex]?.format
+  const block = run.version.spec.blocks[blockIndex]
+  const limit = block ? roundLimit(block) : null
+  const undone = lowestUndone(run.blocks[blockIndex]?.logged ?? [])
+  const workedOff = limit !== null && undone > limit
   const classMs = place?.classMs ?? 0
   const inBrief = segment?.kind === 'brief'
-  const isRounds = format?.type === 'rounds' || format?.type === 'for-time'
-  const plan = isRounds ? planOf(run, blockIndex) : null
-  const round = plan ? lowestUndone(run.blocks[blockIndex]?.logged ?? []) : null
-  const workedOff = plan !== null && round !== null && round > plan.roundLimit
   const isOwnSegment = run.resting !== null && place?.segment === run.resting.segment
   const base: Position = {
     phase: !place ? 'ready' : isOver ? 'over' : inBrief ? 'brief' : 'segment',
@@ -118,7 +117,7 @@ export function describe(run: Run, place: Place | null): Position {
       ? Math.min(Math.max(0, classMs - span.bodyStartMs), span.bodyEndMs - span.bodyStartMs)
       : 0,
     bodyLeftMs: span ? Math.max(0, span.bodyEndMs - Math.max(classMs, span.bodyStartMs)) : 0,
-    round: workedOff ? plan.roundLimit : round,
+    round: limit === null ? null : Math.min(undone, limit),
     workedOff,
     restingMs: isOwnSegment && run.resting ? classMs - run.resting.sinceClassMs : null,
     rest: null,
@@ -128,7 +127,7 @@ export function describe(run: Run, place: Place | null): Position {
   if (!place) return base
   if (run.resting && place.segment > run.resting.segment) base.owed = { type: 'end-rest-as-needed' }
   else if (segment === null && !run.ended) base.owed = { type: 'end-class' }
-  if (!segment) return base
+  if (!segment || isOver) return base
   if (inBrief) {
     base.elapsedMs = place.briefElapsedMs
     base.briefLeftMs = run.settings.waitAtBriefs

@@ -22,7 +22,7 @@ export function placeMarks(
   const marks = isEdited
     ? marksOf(
         live.map((one) => one.segment),
-        withoutGoneBlocks(spec, blocks),
+        spec,
       )
     : base.marks
   const timed = live.filter((one) => one.segment.kind !== 'brief')
@@ -30,20 +30,17 @@ export function placeMarks(
     const segmentIndex = segmentOf(mark, spec, timed, segments, blocks)
     const segment = segments[segmentIndex]
     if (!segment) return []
-    return [{ ...mark, key: keyOf(mark, segmentIndex, segment, edits), segmentIndex }]
+    // A length that was edited need not halve to whole milliseconds.
+    return [
+      {
+        ...mark,
+        atMs: Math.round(mark.atMs),
+        key: keyOf(mark, segmentIndex, segment, edits),
+        segmentIndex,
+      },
+    ]
   })
   return placed.sort((a, b) => a.segmentIndex - b.segmentIndex || a.atMs - b.atMs)
-}
-
-function withoutGoneBlocks(spec: SessionSpec, blocks: readonly BlockSpan[]): SessionSpec {
-  return {
-    ...spec,
-    blocks: spec.blocks.map((block, index) => {
-      const span = blocks[index]
-      const isGone = !span || span.bodyEndMs <= span.bodyStartMs
-      return isGone ? { ...block, cues: [] } : block
-    }),
-  }
 }
 
 function segmentOf(

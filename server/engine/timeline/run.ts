@@ -106,8 +106,11 @@ export interface Reloaded {
   run: Run
   /** To be stored: the pause of a long gap. */
   events: EventDraft[]
-  /** How long the gap was where it is a pause, so that the member is asked where to go on; else null. */
-  gapMs: number | null
+  /**
+   * Set where the gap is a pause, so that the member is asked where to go on: how long it was, null
+   * where that cannot be known.
+   */
+  gap: { agoMs: number | null } | null
 }
 
 /**
@@ -135,7 +138,7 @@ export function runFromEvents(
     }
     run = reduce(run.ended ? run : caughtUp(run, event), event)
   }
-  if (!run.clock) return { run, events: [], gapMs: null }
+  if (!run.clock) return { run, events: [], gap: null }
   if (alive?.place && isAhead(alive.place, run.clock.place)) {
     const { restingSinceMs, ...place } = alive.place
     run = at(run, place)
@@ -143,8 +146,8 @@ export function runFromEvents(
       run = { ...run, resting: { segment: place.segment, sinceClassMs: restingSinceMs } }
     }
   }
-  if (run.halted || run.ended || agoMs <= GAP_MS) return { run, events: [], gapMs: null }
-  return afterGap(run, lastMs, now)
+  if (run.halted || run.ended || agoMs <= GAP_MS) return { run, events: [], gap: null }
+  return pausedAt(run, lastMs, Number.isFinite(agoMs) ? agoMs : null)
 }
 
 /**
@@ -152,12 +155,16 @@ export function runFromEvents(
  * `lastAliveMs`: nothing up to `GAP_MS`, else a pause from that sign of life.
  */
 export function afterGap(run: Run, lastAliveMs: number, now: number): Reloaded {
-  const gapMs = wholeMs(now) - wholeMs(lastAliveMs)
+  const agoMs = wholeMs(now) - wholeMs(lastAliveMs)
+  return agoMs <= GAP_MS ? { run, events: [], gap: null } : pausedAt(run, lastAliveMs, agoMs)
+}
+
+function pausedAt(run: Run, lastAliveMs: number, agoMs: number | null): Reloaded {
   const position = positionAt(run, lastAliveMs)
   const runs = position.phase === 'brief' || position.phase === 'segment'
-  if (gapMs <= GAP_MS || !runs || position.halted) return { run, events: [], gapMs: null }
+  if (!runs || position.halted) return { run, events: [], gap: null }
   const paused = apply(run, { type: 'pause' }, lastAliveMs)
-  return { run: paused.run, events: paused.events, gapMs }
+  return { run: paused.run, events: paused.events, gap: { agoMs } }
 }
 
 function isAhead(place: Place, other: Place): boolean {
