@@ -1,0 +1,43 @@
+/** Stations that stay easier: after 'this hurts', until member and coach have cleared it. */
+import type { HurtHold, PlayerData } from '@/server/contract/classes'
+import { easierFor, HURT_PLACE_TEXT } from '@/server/engine/fit/hurt'
+import type { ClassEvent } from '@/server/engine/tally/events'
+import type { StationView } from './scene'
+
+export const isOpenHold = (hold: HurtHold) =>
+  hold.memberClearedAt === null || hold.coachClearedAt === null
+
+/** The hold from an earlier class that this station is under, or null. */
+export function holdOn(data: PlayerData, view: StationView): HurtHold | null {
+  const { movement } = view
+  if (!movement) return null
+  return (
+    data.holds.find(
+      (hold) =>
+        isOpenHold(hold) &&
+        movement.joints.some((joint) => joint === hold.place) &&
+        easierFor(hold.place, view.station, movement) !== null,
+    ) ?? null
+  )
+}
+
+/**
+ * Why a station's other options are shut, in a few words, or null: held since an earlier class, or
+ * the easier option was taken in this one because it hurt.
+ */
+export function heldReason(
+  data: PlayerData,
+  events: readonly ClassEvent[],
+  view: StationView,
+): string | null {
+  const hold = holdOn(data, view)
+  if (hold) return `held: ${HURT_PLACE_TEXT[hold.place].toLowerCase()}`
+  if (!view.movement || view.option?.level !== 'easier') return null
+  for (const event of events) {
+    if (event.type !== 'hurt' || event.block !== view.block) continue
+    if (easierFor(event.where, view.station, view.movement)?.option === view.option.option) {
+      return `held: ${HURT_PLACE_TEXT[event.where].toLowerCase()}`
+    }
+  }
+  return null
+}

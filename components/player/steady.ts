@@ -1,0 +1,52 @@
+/**
+ * A selector that keeps giving its last value while `same` finds the next one equal, so that a store
+ * which is refreshed several times a second renders only where something to be seen has changed.
+ */
+import { useState } from 'react'
+import type { PlayerStore } from '@/hooks/player/types'
+import type { Position } from '@/server/engine/timeline/run-types'
+import { usePlayer } from './player-context'
+
+function steady<T>(select: (state: PlayerStore) => T, same: (one: T, other: T) => boolean) {
+  let last: { value: T } | null = null
+  return (state: PlayerStore): T => {
+    const next = select(state)
+    if (last && same(last.value, next)) return last.value
+    last = { value: next }
+    return next
+  }
+}
+
+function samePlace(one: Position | null, other: Position | null): boolean {
+  if (one === other) return true
+  if (!one || !other) return false
+  return (
+    one.phase === other.phase &&
+    one.halted === other.halted &&
+    one.segmentIndex === other.segmentIndex &&
+    one.segment === other.segment &&
+    one.blockIndex === other.blockIndex &&
+    one.round === other.round &&
+    one.workedOff === other.workedOff &&
+    (one.briefLeftMs === null) === (other.briefLeftMs === null) &&
+    (one.restingMs === null) === (other.restingMs === null) &&
+    (one.rest === null) === (other.rest === null) &&
+    (one.rest === null || one.rest.mayCutInMs <= 0) ===
+      (other.rest === null || other.rest.mayCutInMs <= 0) &&
+    one.rest?.mayLengthenMs === other.rest?.mayLengthenMs
+  )
+}
+
+/** The position, given anew only when something other than its running times has changed. */
+export function useSteadyPosition(): Position | null {
+  const [select] = useState(() => steady((state) => state.position, samePlace))
+  return usePlayer(select)
+}
+
+/** A value worked out from the running position, rendered only when it changes. */
+export function useFromPosition<T extends string | number | boolean | null>(
+  work: (position: Position) => T,
+  without: T,
+): T {
+  return usePlayer((state) => (state.position ? work(state.position) : without))
+}

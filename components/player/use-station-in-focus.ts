@@ -1,0 +1,65 @@
+'use client'
+import { useState } from 'react'
+import { blockPlan } from '@/server/engine/pace/block-plan'
+import { expectedStationStartMs } from '@/server/engine/pace/forecast'
+import type { Position, Run } from '@/server/engine/timeline/run-types'
+import { usePlayer } from './player-context'
+
+/** Where the member said to be: this station, from this instant of the body. */
+interface Said {
+  segment: number
+  round: number
+  station: number
+  atMs: number
+}
+
+/**
+ * Index of the station that heads the screen. Timed pieces know theirs; in rounds it is the one that
+ * the planned pace reaches since the round began, or since the member brought one forward.
+ */
+export function stationInFocus(run: Run, position: Position, said: Said | null): number {
+  const own = position.segment?.station
+  if (own !== undefined) return own
+  const block = run.version.spec.blocks[position.blockIndex]
+  const state = run.blocks[position.blockIndex]
+  const span = run.timeline.blocks[position.blockIndex]
+  if (!block || !state || !span || position.round === null || position.segment?.kind !== 'work') {
+    return 0
+  }
+  const plan = blockPlan(run.version, block, state.options)
+  if (!plan) return 0
+  const round = position.round
+  const logged = state.logged.filter((each) => each.round < round)
+  const roundStartMs = Math.max(0, ...logged.map((each) => each.classMs - span.bodyStartMs))
+  const isSaid = said?.segment === position.segmentIndex && said.round === round
+  const from = isSaid ? said.station : 0
+  const startOf = (station: number) => expectedStationStartMs(plan, round, station, roundStartMs)
+  const lateMs = isSaid ? said.atMs - (startOf(from) ?? said.atMs) : 0
+  let station = from
+  for (let next = from + 1; next < plan.stations.length; next += 1) {
+    const startMs = startOf(next)
+    if (startMs === null || position.bodyElapsedMs < startMs + lateMs) break
+    station = next
+  }
+  return station
+}
+
+export function useStationInFocus(): {
+  station: number
+  bringForward: (station: number, position: Position) => void
+} {
+  const [said, setSaid] = useState<Said | null>(null)
+  const station = usePlayer((state) =>
+    state.run && state.position ? stationInFocus(state.run, state.position, said) : 0,
+  )
+  return {
+    station,
+    bringForward: (next, position) =>
+      setSaid({
+        segment: position.segmentIndex,
+        round: position.round ?? 1,
+        station: next,
+        atMs: position.bodyElapsedMs,
+      }),
+  }
+}
