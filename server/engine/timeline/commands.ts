@@ -12,6 +12,16 @@ import type { Command, Effect, EventDraft, Position, Run, RunBlock } from './run
 /** A second press within this time is one press. */
 export const DOUBLE_PRESS_MS = 1_500
 
+// What the schema of events takes: a long text is cut rather than a whole event lost at the door.
+const MOST_NOTE = 1_000
+const MOST_REASON = 200
+const MOST_WHERE = 60
+const MOST_HURTS = 20
+
+function noted(note: string | undefined): { note?: string } {
+  return note ? { note: note.slice(0, MOST_NOTE) } : {}
+}
+
 /** A run in the middle of a command. */
 export interface Step {
   run: Run
@@ -92,7 +102,7 @@ export function carryOut(
         ...(blockId === undefined || !inClass ? {} : { block: blockId }),
         ...(station === undefined || !inClass ? {} : { station }),
         where: command.where,
-        ...(command.note ? { note: command.note } : {}),
+        ...noted(command.note),
       })
       return null
     }
@@ -105,8 +115,14 @@ export function carryOut(
         type: 'rated',
         classMs,
         rpe: command.rpe,
-        ...(command.note ? { note: command.note } : {}),
-        ...(command.hurts ? { hurts: command.hurts } : {}),
+        ...noted(command.note),
+        ...(command.hurts
+          ? {
+              hurts: command.hurts
+                .slice(0, MOST_HURTS)
+                .map((hurt) => ({ where: hurt.where, ...noted(hurt.note) })),
+            }
+          : {}),
       })
       return null
     }
@@ -127,8 +143,8 @@ export function carryOut(
         type: 'stopped',
         classMs,
         ...(command.sign ? { sign: command.sign } : {}),
-        ...(command.where ? { where: command.where } : {}),
-        ...(command.note ? { note: command.note } : {}),
+        ...(command.where ? { where: command.where.slice(0, MOST_WHERE) } : {}),
+        ...noted(command.note),
       })
       return null
     }
@@ -291,7 +307,7 @@ function skipBlock(
     type: 'block-skipped',
     classMs: position.classMs,
     block: block.id,
-    ...(command.reason ? { reason: command.reason } : {}),
+    ...(command.reason ? { reason: command.reason.slice(0, MOST_REASON) } : {}),
   })
   return null
 }

@@ -61,7 +61,7 @@ export type Command =
   | { type: 'rate'; rpe: number; note?: string; hurts?: { where: HurtPlace; note?: string }[] }
 
 /** What the rim must do besides storing the events. */
-export type Effect = { type: 'sound'; sound: 'logged' | 'start' } | { type: 'say'; text: string }
+export type Effect = { type: 'sound'; sound: 'logged' }
 
 export interface Applied {
   run: Run

@@ -61,9 +61,9 @@ export function positionAt(run: Run, now: number): Position {
 /**
  * The marks that fall due from `fromMs` up to, not including, `toMs`, on the clock of `now`, with the
  * start sound of work that a brief or 'Start class' leads straight into. Empty while halted, and never
- * before the last command: the rim asks again from the instant of a command, cancels what it had
- * scheduled and was not heard, and plays a key that was heard no second time. A rest that is
- * lengthened counts down anew, so its beeps and calls have new keys.
+ * before the last command. The rim's part: at a command it cancels what it had scheduled for later than
+ * that instant, asks again from it, and plays no key that it has played. A rest that is lengthened
+ * counts down anew, so its beeps and calls have new keys.
  */
 export function marksBetween(run: Run, fromMs: number, toMs: number): DueMark[] {
   if (!run.clock || run.halted || run.ended) return []
