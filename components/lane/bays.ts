@@ -41,7 +41,7 @@ export function laneLengthMs(segments: readonly Segment[]): number {
 /**
  * The bays of a class, side by side without a hole.
  * @param segments compiled segments, in order, milliseconds of class time
- * @param presentMs where the class is; null before it: all is still to come
+ * @param presentMs where the class is; null or 0 before it: all is still to come
  * @param finestMs stretches of rest inside a block shorter than this are painted over
  */
 export function baysOf(
@@ -82,7 +82,7 @@ export function baysOf(
 }
 
 function stateOf(startMs: number, endMs: number, presentMs: number | null): BayState {
-  if (presentMs === null || presentMs < startMs) return 'coming'
+  if (presentMs === null || presentMs <= 0 || presentMs < startMs) return 'coming'
   return presentMs >= endMs ? 'done' : 'present'
 }
 

@@ -83,14 +83,22 @@ export function Lane({
     '--lane-present': `${measure.presentPx}px`,
     '--lane-overhang': `${measure.overhangPx}px`,
     '--lane-inset': inset,
+    '--present-x': part.toFixed(6),
     fontSize: `${measure.textRem}rem`,
   }
-  const track = bays.map((bay) => <BayMark key={bay.block} bay={bay} lengthMs={lengthMs} />)
+  const track = bays.map((bay) => (
+    <BayMark
+      key={bay.block}
+      bay={bay}
+      lengthMs={lengthMs}
+      line={presentMs === null ? null : view}
+    />
+  ))
   const line = presentMs === null ? null : <PresentLine />
   return (
     <div
       ref={ref}
-      className={clsx('relative', className)}
+      className={clsx('relative overflow-x-clip', className)}
       style={style}
       role="img"
       aria-label={label ?? laneText(bays, presentMs)}
@@ -106,9 +114,8 @@ export function Lane({
             {track}
             {line ? (
               <div
-                data-lane-mover
-                className="pointer-events-none absolute inset-0"
-                style={runsAlong(part)}
+                className="pointer-events-none absolute inset-0 will-change-transform"
+                style={runsAlong}
               >
                 {line}
               </div>
@@ -118,9 +125,8 @@ export function Lane({
           <>
             <div className="absolute inset-0 overflow-hidden">
               <div
-                data-lane-mover
                 className="absolute inset-y-0 will-change-transform"
-                style={slidesUnder(part, lengthMs, shownMs)}
+                style={slidesUnder(lengthMs, shownMs)}
               >
                 {track}
               </div>
@@ -143,13 +149,9 @@ export function Lane({
 
 const insets: CSSProperties = { left: 'var(--lane-inset)', right: 'var(--lane-inset)' }
 
-const runsAlong = (part: number): Style => ({
-  '--present-x': part.toFixed(6),
-  transform: 'translateX(calc(var(--present-x) * 100%))',
-})
+const runsAlong: CSSProperties = { transform: 'translateX(calc(var(--present-x) * 100%))' }
 
-const slidesUnder = (part: number, lengthMs: number, shownMs: number): Style => ({
-  '--present-x': part.toFixed(6),
+const slidesUnder = (lengthMs: number, shownMs: number): CSSProperties => ({
   left: percent(CLOSE_AT, 1),
   width: percent(lengthMs, shownMs),
   transform: 'translateX(calc(var(--present-x) * -100%))',
@@ -192,27 +194,105 @@ function pieceStyle(bay: Bay, piece: { startMs: number; endMs: number }): Style 
   }
 }
 
-/** Shown only where the bay is at least this wide (and less than `below`), else no width at all. */
-function fits(atLeastEm: number, belowEm?: number): Style {
-  const shown = `calc((100% - ${atLeastEm}em) * 9999)`
+/** Shown only where there is room, else no width at all: `room` is what is left over, a CSS length. */
+const shownWhere = (room: string): string => `max(0px, calc(${room} * 9999))`
+
+const NUMBER_EM = 1.45
+const SECOND_DIGIT_EM = 0.55
+const EDGE_EM = 0.9
+
+interface Wording {
+  number: number | null
+  name: string
+  needEm: number
+}
+
+/** From the fullest to the barest; the first that fits is shown. */
+function wordingsOf({ number, title }: Bay): Wording[] {
+  const numberEm = number === null ? 0 : NUMBER_EM + (number > 9 ? SECOND_DIGIT_EM : 0)
+  const short = shortName(title)
+  const named = (name: string): Wording => ({
+    number,
+    name,
+    needEm: numberEm + nameWidthEm(name) + EDGE_EM,
+  })
+  const wordings = [named(title)]
+  if (nameWidthEm(short) < nameWidthEm(title)) wordings.push(named(short))
+  if (number !== null) wordings.push({ number, name: '', needEm: numberEm })
+  return wordings
+}
+
+/** Where a wording stands in its bay, and how much room is left over there. */
+interface Place {
+  left: string
+  room: string
+}
+const CLEAR_OF_LINE_EM = 0.35
+
+/**
+ * In the bay with the present line the words keep clear of it: before it where they fit, else behind
+ * it; in the close view behind it first, since what lies before it slides away.
+ */
+function placeOf(
+  bay: Bay,
+  needEm: number,
+  lengthMs: number,
+  line: LaneProps['view'] | null,
+): Place {
+  if (!line || bay.state !== 'present') return { left: '0px', room: `(100% - ${needEm}em)` }
+  const start = bay.startMs / lengthMs
+  const width = (bay.endMs - bay.startMs) / lengthMs
+  const at = `((var(--present-x) - ${start.toFixed(6)}) / ${width.toFixed(6)} * 100%)`
+  const behind = `(${at} + var(--lane-present) / 2 + ${CLEAR_OF_LINE_EM}em)`
+  const before = `(${at} - var(--lane-present) / 2 - ${needEm}em)`
+  const after = `(100% - ${behind} - ${needEm}em)`
   return {
-    maxWidth:
-      belowEm === undefined
-        ? `max(0px, ${shown})`
-        : `max(0px, min(${shown}, calc((${belowEm}em - 100%) * 9999)))`,
+    left:
+      line === 'close'
+        ? `clamp(0px, ${after} * 9999, ${behind})`
+        : `clamp(0px, ${before} * -9999, ${behind})`,
+    room: `max(${before}, ${after})`,
   }
 }
 
-const NUMBER_EM = 1.5
-const ROOM_EM = 1.1
+function BayNames({ bay, lengthMs, line }: BayMarkProps) {
+  const placed = wordingsOf(bay).map((wording) => ({
+    wording,
+    place: placeOf(bay, wording.needEm, lengthMs, line),
+  }))
+  return placed.map(({ wording, place }, index) => {
+    const fuller = placed[index - 1]?.place.room
+    return (
+      <div
+        key={wording.name}
+        className={clsx(
+          'absolute flex items-center overflow-hidden condensed leading-none whitespace-nowrap',
+          bay.paint === 'low' ? 'top-[8%] h-[56%] text-text-quiet' : 'inset-y-0 text-text',
+        )}
+        style={{
+          left: place.left,
+          maxWidth: shownWhere(fuller ? `min(${place.room}, -1 * ${fuller})` : place.room),
+        }}
+      >
+        {wording.number === null ? null : (
+          <span className="pl-[0.5em] figures text-[1.06em] leading-none">{wording.number}</span>
+        )}
+        {wording.name ? <span className="pl-[0.5em] leading-[1.3]">{wording.name}</span> : null}
+      </div>
+    )
+  })
+}
 
-function BayMark({ bay, lengthMs }: { bay: Bay; lengthMs: number }) {
-  const open = bay.paint === 'open'
-  const numberEm = bay.number === null ? 0 : NUMBER_EM + (bay.number > 9 ? 0.6 : 0)
-  const full = numberEm + nameWidthEm(bay.title) + ROOM_EM
-  const short = shortName(bay.title)
-  const shortEm = numberEm + nameWidthEm(short) + ROOM_EM
-  const shorten = short !== bay.title && shortEm < full
+interface BayMarkProps {
+  bay: Bay
+  lengthMs: number
+  /** How the present line runs, where there is one. */
+  line: LaneProps['view'] | null
+}
+
+const EDGE = 'bg-line absolute inset-y-0 w-[min(var(--lane-line),16%)]'
+
+function BayMark({ bay, lengthMs, line }: BayMarkProps) {
   return (
     <div
       data-bay={bay.block}
@@ -222,50 +302,19 @@ function BayMark({ bay, lengthMs }: { bay: Bay; lengthMs: number }) {
         width: percent(bay.endMs - bay.startMs, lengthMs),
       }}
     >
-      <div className="absolute inset-y-0 -left-[calc(var(--lane-line)/2)] w-(--lane-line) bg-line" />
-      <div className="absolute inset-y-0 -right-[calc(var(--lane-line)/2)] w-(--lane-line) bg-line" />
-      {open ? null : (
-        <>
-          <div className="absolute inset-x-[calc(var(--lane-line)*1.15)] inset-y-[calc(var(--lane-line)*1.65)]">
-            {bay.pieces.map((piece) => (
-              <div
-                key={piece.startMs}
-                className="absolute inset-y-0"
-                style={pieceStyle(bay, piece)}
-              />
-            ))}
-          </div>
-          {bay.paint === 'hatched' ? null : (
+      <div className={clsx(EDGE, 'left-0 -translate-x-1/2')} />
+      <div className={clsx(EDGE, 'right-0 translate-x-1/2')} />
+      {bay.paint === 'open' ? null : (
+        <div className="absolute inset-x-[min(calc(var(--lane-line)*1.15),16%)] inset-y-[calc(var(--lane-line)*1.65)]">
+          {bay.pieces.map((piece) => (
             <div
-              className={clsx(
-                'absolute inset-x-[calc(var(--lane-line)*1.15)] flex items-center condensed leading-none whitespace-nowrap',
-                bay.paint === 'low'
-                  ? 'top-[calc(var(--lane-line)*1.4)] h-[58%] text-text-quiet'
-                  : 'inset-y-0 text-text',
-              )}
-            >
-              {bay.number === null ? null : (
-                <span
-                  className="shrink-0 overflow-hidden figures text-[1.06em] leading-none"
-                  style={fits(numberEm)}
-                >
-                  <span className="pl-[0.5em]">{bay.number}</span>
-                </span>
-              )}
-              <span className="shrink-0 overflow-hidden leading-[1.3]" style={fits(full)}>
-                <span className="pl-[0.5em]">{bay.title}</span>
-              </span>
-              {shorten ? (
-                <span
-                  className="shrink-0 overflow-hidden leading-[1.3]"
-                  style={fits(shortEm, full)}
-                >
-                  <span className="pl-[0.5em]">{short}</span>
-                </span>
-              ) : null}
-            </div>
-          )}
-        </>
+              key={piece.startMs}
+              className="absolute inset-y-0"
+              style={pieceStyle(bay, piece)}
+            />
+          ))}
+          {bay.paint === 'hatched' ? null : <BayNames bay={bay} lengthMs={lengthMs} line={line} />}
+        </div>
       )}
     </div>
   )
@@ -286,7 +335,10 @@ function BayTimes({ bays, lengthMs }: { bays: readonly Bay[]; lengthMs: number }
                 width: percent(bay.endMs - bay.startMs, lengthMs),
               }}
             >
-              <span className="overflow-hidden" style={fits(text.length * 0.56 + 0.2)}>
+              <span
+                className="overflow-hidden"
+                style={{ maxWidth: shownWhere(`(100% - ${text.length * 0.5 + 0.25}em)`) }}
+              >
                 {text}
               </span>
             </div>

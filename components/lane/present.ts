@@ -3,7 +3,6 @@
  * rendered (its `ref`), where the class is, and how long it is.
  */
 export function placePresent(lane: HTMLElement, presentMs: number, lengthMs: number): void {
-  const mover = lane.querySelector<HTMLElement>('[data-lane-mover]')
   const part = lengthMs > 0 ? Math.min(1, Math.max(0, presentMs / lengthMs)) : 0
-  mover?.style.setProperty('--present-x', part.toFixed(6))
+  lane.style.setProperty('--present-x', part.toFixed(6))
 }

@@ -40,7 +40,8 @@ export function Rungs({
     x: 60 + index * STEP,
     half: (rungLength(rung.reps, longest) * (HEIGHT - 40)) / 2,
   }))
-  const width = 60 + Math.max(0, rungs.length - 1) * STEP + (runOut || after ? 76 : 40)
+  const width =
+    60 + Math.max(0, rungs.length - 1) * STEP + (runOut || after || rungs.length === 1 ? 76 : 40)
   const height = HEIGHT + (showNumbers ? NUMBERS : 0)
   return (
     <svg
@@ -51,7 +52,12 @@ export function Rungs({
       focusable="false"
       className={className}
     >
-      <Rails spots={spots} width={width} begins={before > 0} runOut={runOut} />
+      <Rails
+        spots={spots}
+        width={width}
+        begins={before > 0}
+        runsOn={runOut || after || rungs.length === 1}
+      />
       {spots.map((spot) => (
         <RungBar key={spot.rung.round} spot={spot} />
       ))}
@@ -62,7 +68,7 @@ export function Rungs({
               x={x}
               y={HEIGHT + 58}
               textAnchor="middle"
-              fontSize={52}
+              fontSize={longest > 99 ? 40 : 52}
               className={clsx('condensed', numberFill[rung.state])}
             >
               {rung.reps}
@@ -131,12 +137,12 @@ function Rails({
   spots,
   width,
   begins,
-  runOut,
+  runsOn,
 }: {
   spots: readonly Spot[]
   width: number
   begins: boolean
-  runOut: boolean
+  runsOn: boolean
 }) {
   const first = spots[0]
   const last = spots[spots.length - 1]
@@ -171,7 +177,7 @@ function Rails({
         const from = points[index]
         return from ? [stretch(from, to, -1), stretch(from, to, 1)] : []
       })}
-      {runOut
+      {runsOn
         ? [
             stretch(last, { x: width, half: last.half }, -1),
             stretch(last, { x: width, half: last.half }, 1),

@@ -67,7 +67,7 @@ export function timeKeys(
     stretch(seconds, holds, (total * reps) / sum)
   } else if (secondsPerRep || total > 0) {
     const sum = seconds.reduce((all, each) => all + each, 0)
-    stretch(seconds, holds, ((secondsPerRep ?? total) * reps) / sum)
+    stretch(seconds, holds, ((total > 0 ? total : (secondsPerRep ?? 0)) * reps) / sum)
   }
   const keys: TimedKey[] = []
   let startSeconds = 0
@@ -205,16 +205,18 @@ function compile(slug: FigureSlug, figure: FigureData, timing: FigureTiming): Mo
     const mode = modes[index]
     return jointsOf(scratch, mode ?? fallbackModes)
   }
-  const stillKey = figure.still ?? Math.floor(figure.keys.length / 2)
-  const stillTime = keys.find((timed) => timed.key === stillKey)?.startSeconds ?? 0
+  const startOf = (index: number): number =>
+    keys.find((timed) => timed.key === index)?.startSeconds ?? cycle
+  const still = figure.still ?? Math.floor(figure.keys.length / 2)
+  const stillKey = Math.floor(still)
+  const stillTime =
+    startOf(stillKey) + (startOf(stillKey + 1) - startOf(stillKey)) * (still - stillKey)
   return {
     slug,
     cycleMs: cycle * 1000,
     reps: figure.reps ?? 1,
     at,
-    keyStartsMs: figure.keys.map(
-      (_, index) => (keys.find((timed) => timed.key === index)?.startSeconds ?? 0) * 1000,
-    ),
+    keyStartsMs: figure.keys.map((_, index) => startOf(index) * 1000),
     stillMs: stillTime * 1000,
   }
 }

@@ -154,9 +154,10 @@ interface FootFrame {
   forward: Vec
   up: Vec
 }
-function footFrame(slope: number, toesOut: number, side: SideName): FootFrame {
+/** `legOut`: a foot in the air tips sideways with its leg; on the floor it lies flat. */
+function footFrame(slope: number, toesOut: number, legOut: number, side: SideName): FootFrame {
   const heading = vec(cosine(toesOut), 0, signOf(side) * sine(toesOut))
-  const upright = vec(0, 1)
+  const upright = vec(0, cosine(legOut), -signOf(side) * sine(legOut))
   return {
     forward: add(scale(heading, cosine(slope)), scale(upright, -sine(slope))),
     up: add(scale(heading, sine(slope)), scale(upright, cosine(slope))),
@@ -203,9 +204,9 @@ export function jointsOf(numbers: PoseNumbers, modes: PoseModes): Joints {
   const leg = (side: SideName): LegJoints => {
     const its = numbers[side]
     const hip = along(pelvis, lower.lateral, signOf(side) * HIP_HALF)
-    const foot = footFrame(its.slope, its.toesOut, side)
     const mode = modes[side].leg
     const solved = mode === 'ankle' || mode === 'toes'
+    const foot = footFrame(its.slope, its.toesOut, solved ? 0 : its.shankOut, side)
     if (solved && modes.root !== side) {
       const pole = vec(its.kneePoleX, its.kneePoleY, its.kneePoleZ)
       const { middle, end } = solveTwoBones(hip, ankleTarget(its, mode, foot), THIGH, SHANK, pole)
@@ -265,7 +266,7 @@ function pelvisOver(
     const knee = vec(leg.kneeX, leg.kneeY, signOf(side) * HIP_HALF)
     return subtract(subtract(knee, thigh), toHip)
   }
-  const foot = footFrame(leg.slope, leg.toesOut, side)
+  const foot = footFrame(leg.slope, leg.toesOut, 0, side)
   const ankle = ankleTarget(leg, mode === 'toes' ? 'toes' : 'ankle', foot)
   const shank = scale(direction(leg.shank, leg.shankOut, side), SHANK)
   return subtract(subtract(subtract(ankle, shank), thigh), toHip)
@@ -273,12 +274,12 @@ function pelvisOver(
 
 const pointToVec = (point: Point, z: number): Vec => vec(point[0], point[1], point[2] ?? z)
 
-/** The leg of a key for one side: what the key says of both, and what it says of this one. */
+/** The leg of a key for one side: its own where it has one, else what the key says of both. */
 export function legOf(key: KeyPose, side: SideName): LegPose {
-  return { ...key.legs, ...(side === 'near' ? key.nearLeg : key.farLeg) }
+  return (side === 'near' ? key.nearLeg : key.farLeg) ?? key.legs ?? {}
 }
 export function armOf(key: KeyPose, side: SideName): ArmPose {
-  return { ...key.arms, ...(side === 'near' ? key.nearArm : key.farArm) }
+  return (side === 'near' ? key.nearArm : key.farArm) ?? key.arms ?? {}
 }
 
 /** The point that a plant holds still, above the floor by the part's own thickness. */
@@ -319,8 +320,12 @@ export function resolveKey(key: KeyPose): ResolvedKey {
     const leg = legOf(key, side)
     const arm = armOf(key, side)
     const shank = leg.shank ?? 0
+    // Over a flat foot the knee goes where the toes point, even with the trunk bent right down.
+    const overToes = leg.plant && 'sole' in leg.plant ? vec(1, 0) : vec(0, 0)
     const kneePole =
-      leg.kneeTowards === undefined ? frame.front : direction(leg.kneeTowards, 0, side)
+      leg.kneeTowards === undefined
+        ? add(frame.front, overToes)
+        : direction(leg.kneeTowards, 0, side)
     const elbowPole = add(
       arm.elbowTowards === undefined
         ? scale(add(frame.front, frame.up), -1)

@@ -106,7 +106,10 @@ export interface FigureData {
   /** Reps in one cycle of the keys: 2 where the sides change. */
   reps?: 1 | 2
   kit?: readonly Kit[]
-  /** Index of the key that shows the movement best when it stands still; without it the middle one. */
+  /**
+   * The position that shows the movement best when it stands still, as an index of the keys, which
+   * may lie between two (0.5: half-way from the first to the second); without it the middle key.
+   */
   still?: number
 }
 

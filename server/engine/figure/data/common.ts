@@ -50,7 +50,7 @@ export function otherSide(pose: KeyPose): KeyPose {
 export const ALL_FOURS: KeyPose = {
   body: { at: [0, THIGH + 0.038], lean: 76, nod: -4 },
   legs: { thigh: 0, shank: -90, pointed: 82 },
-  arms: { hand: [0.285, 0.022], open: 90 },
+  arms: { hand: [0.285, 0.022], open: 90, elbowTowards: -60 },
 }
 
 /** Sitting on a chair whose seat ends at x = 0.07. */

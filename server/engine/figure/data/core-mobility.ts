@@ -44,36 +44,36 @@ const breathing = (pose: KeyPose, round = 2): readonly [Key, Key] => [
 
 const ON_FOREARMS: ArmPose = { upper: 0, forearm: 89 }
 
-const sideOn = (tilt: number, hipY: number): KeyPose['body'] => ({
-  at: [0, hipY, 0],
-  lean: 0,
-  tilt,
-})
+/** Seen from the front, head to the left; the near side is the lower one. */
 const sidePlank = (hipY: number, tilt: number): KeyPose => ({
-  body: sideOn(tilt, hipY),
-  nearLeg: { thigh: 0, thighOut: -tilt, shank: 0, shankOut: -tilt, toesOut: 0 },
-  farLeg: { thigh: 0, thighOut: tilt, shank: 0, shankOut: tilt, toesOut: 0 },
-  nearArm: { upper: 0, upperOut: 0, forearm: 60, forearmOut: 40 },
-  farArm: { upper: 180, upperOut: 4, forearm: 180, forearmOut: 4 },
+  body: { at: [0, hipY, 0], lean: 0, tilt },
+  nearLeg: { thigh: 0, thighOut: -tilt },
+  farLeg: { thigh: 0, thighOut: tilt },
+  nearArm: { upper: 0, forearm: 90, forearmOut: 48 },
+  farArm: { upper: 180, upperOut: 2 },
 })
 const kneeSidePlank = (hipY: number, tilt: number): KeyPose => ({
   ...sidePlank(hipY, tilt),
-  nearLeg: { thigh: 0, thighOut: -tilt, shank: -84, shankOut: -8, toesOut: 0 },
-  farLeg: { thigh: 0, thighOut: tilt, shank: -84, shankOut: 8, toesOut: 0 },
+  nearLeg: { thigh: 0, thighOut: -tilt, shank: -90, shankOut: -10, pointed: 60 },
+  farLeg: { thigh: 0, thighOut: tilt, shank: -90, shankOut: 10, pointed: 60 },
 })
+const reaching = (pose: KeyPose): readonly [Key, Key] => [
+  key(pose, 2),
+  key({ ...pose, farArm: { ...pose.farArm, upperOut: 5 } }, 2),
+]
 
 const birdDogLong: KeyPose = {
   ...ALL_FOURS,
   body: { ...ALL_FOURS.body, nod: -2 },
   nearLeg: { thigh: 0, shank: -90, pointed: 82 },
   farLeg: { thigh: -88, shank: -90, pointed: 20 },
-  nearArm: { upper: 98, forearm: 98, open: 98 },
-  farArm: { hand: [0.285, 0.022], open: 90 },
+  nearArm: { upper: 98, forearm: 98, open: 98, elbowTowards: -60 },
+  farArm: { hand: [0.285, 0.022], open: 90, elbowTowards: -60 },
 }
 const birdDogTable: KeyPose = { ...ALL_FOURS, body: { ...ALL_FOURS.body, nod: -2 } }
 
 const kneelingBase = { plant: { knee: [0, 0] }, shank: -90, pointed: 82 } as const
-const HANDS_AHEAD = { hand: [0.36, 0.022], open: 90 } as const
+const HANDS_AHEAD = { hand: [0.36, 0.022], open: 90, elbowTowards: -115, elbowOut: 0.8 } as const
 
 const halfKneelStretch = (thigh: number, lean: number, arm: number): KeyPose => ({
   body: { on: 'far', lean, nod: -3 },
@@ -145,12 +145,12 @@ export const CORE_MOBILITY = {
   'side-plank': {
     description: 'Held on one forearm and the side of the feet, hips high, body in one line.',
     view: 'front',
-    keys: [key(sidePlank(0.232, 72), 2), key(sidePlank(0.236, 71.4), 2)],
+    keys: reaching(sidePlank(0.227, 72.7)),
   },
   'knee-side-plank': {
     description: 'Held on one forearm and the knee, hips high, body in line from head to knee.',
     view: 'front',
-    keys: [key(kneeSidePlank(0.19, 68), 2), key(kneeSidePlank(0.194, 67.4), 2)],
+    keys: reaching(kneeSidePlank(0.188, 65.2)),
   },
   'bird-dog': {
     description: 'On hands and knees, one arm and the opposite leg reach long.',

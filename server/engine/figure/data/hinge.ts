@@ -53,26 +53,26 @@ export const HINGE = {
   'single-leg-deadlift': {
     description: 'Standing on one leg, tipping forward while the other leg reaches long behind.',
     view: 'side',
-    kit: [{ kind: 'dumbbell', hand: 'far', hold: 'level' }],
+    kit: [{ kind: 'dumbbell', hand: 'near', hold: 'level' }],
     keys: [
       key(
         {
-          body: { on: 'near', lean: 1 },
-          nearLeg: { plant: { sole: [0, 0] }, thigh: 6, shank: -4 },
-          farLeg: { thigh: -4, shank: -12, pointed: 6 },
-          nearArm: HANGING,
-          farArm: { upper: 5, forearm: 7 },
+          body: { on: 'far', lean: 1 },
+          farLeg: { plant: { sole: [0, 0] }, thigh: 6, shank: -4 },
+          nearLeg: { thigh: -4, shank: -52, pointed: -6 },
+          nearArm: { upper: 5, forearm: 7 },
+          farArm: HANGING,
         },
         2,
         { part: 'down', end: 'top' },
       ),
       key(
         {
-          body: { on: 'near', lean: 82, nod: -10 },
-          nearLeg: { plant: { sole: [0, 0] }, thigh: 22, shank: -8 },
-          farLeg: { thigh: -84, shank: -86, pointed: 6 },
-          nearArm: { upper: 4, forearm: 6 },
-          farArm: { upper: -6, forearm: -4 },
+          body: { on: 'far', lean: 82, nod: -10 },
+          farLeg: { plant: { sole: [0, 0] }, thigh: 22, shank: -8 },
+          nearLeg: { thigh: -84, shank: -86, pointed: 6 },
+          nearArm: { upper: -4, forearm: -3 },
+          farArm: { upper: 4, forearm: 6 },
         },
         1.4,
         { part: 'up', end: 'bottom' },
@@ -93,7 +93,7 @@ export const HINGE = {
         {
           ...onFeet(72, -22, 58, { nod: -18 }),
           nearArm: { upper: -4, forearm: -4 },
-          farArm: { upper: 12, forearm: 26 },
+          farArm: { upper: 2, forearm: 6 },
         },
         1.2,
         { part: 'up', end: 'bottom' },
@@ -144,12 +144,6 @@ export const HINGE = {
         1.4,
         { part: 'down', end: 'top' },
       ),
-    ].map(ownNearLeg) as [Key, Key],
+    ],
   },
 } satisfies Record<string, FigureData>
-
-/** Legs given for each side alone, so that the free leg does not inherit the other's plant. */
-function ownNearLeg(pose: Key): Key {
-  const { legs: _shared, ...rest } = pose
-  return rest
-}

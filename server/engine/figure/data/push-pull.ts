@@ -67,6 +67,7 @@ export const PUSH_PULL = {
     description:
       'Hands under the shoulders, body straight from head to heels, the chest lowers to the floor and presses up.',
     view: 'side',
+    still: 0.55,
     keys: [
       key({ ...plankOnToes(17.6), arms: { hand: [0.705, 0.022], ...OPEN_ON_FLOOR } }, 1.4, {
         part: 'down',
@@ -81,6 +82,7 @@ export const PUSH_PULL = {
   'incline-push-up': {
     description: 'A push-up with the hands on a table, body straight.',
     view: 'side',
+    still: 0.55,
     kit: [{ kind: 'table', x: 0.4 }],
     keys: [
       key({ ...plankOnToes(53), arms: { hand: [0.462, 0.42], ...OPEN_ON_FLOOR } }, 1.4, {
@@ -96,6 +98,7 @@ export const PUSH_PULL = {
   'knee-push-up': {
     description: 'A push-up from the knees, straight from head to knees.',
     view: 'side',
+    still: 0.55,
     keys: [
       key({ ...plankOnKnees(36), arms: { hand: [0.425, 0.022], ...OPEN_ON_FLOOR } }, 1.4, {
         part: 'down',
@@ -110,6 +113,7 @@ export const PUSH_PULL = {
   'wall-push-up': {
     description: 'Standing an arm’s length from a wall, the chest leans to it and presses away.',
     view: 'side',
+    still: 0.55,
     kit: [{ kind: 'wall', x: 0.505 }],
     keys: [
       key(wallBody(12), 1.4, { part: 'down', end: 'top' }),
@@ -147,8 +151,8 @@ export const PUSH_PULL = {
     view: 'side',
     kit: [{ kind: 'dumbbell', hand: 'near' }],
     keys: pressKeys(
-      { ...halfKneel, nearArm: RACKED, farArm: { upper: 6, forearm: 22 } },
-      { ...halfKneel, nearArm: PRESSED, farArm: { upper: 6, forearm: 22 } },
+      { ...halfKneel, nearArm: RACKED, farArm: { hand: [0.19, 0.345] } },
+      { ...halfKneel, nearArm: PRESSED, farArm: { hand: [0.19, 0.345] } },
     ),
   },
   'lateral-raise': {

@@ -5,7 +5,7 @@ const standing = onFeet(4, -3, 1)
 const deep = onFeet(88, -34, 40, { nod: -16 })
 
 const GOBLET_UP: ArmPose = { upper: 14, forearm: 150 }
-const GOBLET_DOWN: ArmPose = { upper: 44, forearm: 168 }
+const GOBLET_DOWN: ArmPose = { upper: 30, forearm: 156 }
 const RACK_UP: ArmPose = { upper: 22, forearm: 166, upperOut: 14, forearmOut: 0 }
 const RACK_DOWN: ArmPose = { upper: 50, forearm: 176, upperOut: 10, forearmOut: 0 }
 const OVERHEAD: ArmPose = { upper: 174, forearm: 178 }
@@ -37,7 +37,7 @@ const lungeShallow: KeyPose = {
 const lungeStep: KeyPose = {
   body: { on: 'near', lean: 5 },
   nearLeg: { ...lungeFront, thigh: 20, shank: -8 },
-  farLeg: { thigh: 0, shank: -52, pointed: 10 },
+  farLeg: { thigh: 0, shank: -56, pointed: 6 },
 }
 const lungeTop: KeyPose = {
   body: { on: 'near', lean: 1 },
@@ -98,35 +98,38 @@ export const SQUAT_LUNGE = {
     keys: [
       key(
         withArms(
-          { body: { at: [-0.1, 0.33], lean: 40, nod: -14 }, legs: FEET },
-          { upper: -34, forearm: -22 },
+          {
+            body: { at: [-0.1, 0.33], lean: 40, nod: -14 },
+            legs: { plant: { toes: [0.112, 0], lift: 0 }, kneeTowards: 70 },
+          },
+          { upper: -10, forearm: 6 },
         ),
         0.32,
         { part: 'up', end: 'bottom' },
       ),
       key(
         {
-          body: { at: [0.04, 0.625], lean: 2 },
-          legs: { plant: { toes: [0.112, 0], lift: 52 } },
-          arms: { upper: 120, forearm: 130 },
+          body: { at: [0.07, 0.594], lean: 2 },
+          legs: { plant: { toes: [0.112, 0], lift: 50 } },
+          arms: { upper: 88, forearm: 100 },
         },
-        0.24,
+        0.27,
         { part: 'up' },
       ),
       key(
         {
-          body: { at: [0.04, 0.735], lean: 0 },
+          body: { at: [0.06, 0.72], lean: 0 },
           legs: { thigh: 6, shank: -12, pointed: 46 },
-          arms: { upper: 166, forearm: 172 },
+          arms: { upper: 150, forearm: 160 },
         },
-        0.24,
+        0.27,
         { part: 'down', end: 'top' },
       ),
       key(
         {
-          body: { at: [0.03, 0.61], lean: 6 },
+          body: { at: [0.05, 0.588], lean: 7 },
           legs: { plant: { toes: [0.112, 0], lift: 46 } },
-          arms: { upper: 96, forearm: 108 },
+          arms: { upper: 92, forearm: 104 },
         },
         0.4,
         { part: 'down' },
@@ -203,8 +206,8 @@ export const SQUAT_LUNGE = {
   'supported-lunge': {
     description: 'A reverse lunge with one hand on the back of a chair.',
     view: 'side',
-    kit: [{ kind: 'chair', x: 0.24, facing: 'right' }],
-    keys: lungeKeys(HANGING, () => ({ hand: [0.235, 0.525] })),
+    kit: [{ kind: 'chair', x: 0.15, facing: 'right' }],
+    keys: lungeKeys(HANGING, () => ({ hand: [0.165, 0.525] })),
   },
   'split-squat': {
     description:

@@ -75,14 +75,14 @@ const stepLifted = (z: number): KeyPose => ({
 const climberFeet = { plant: { toes: [0.012, 0], lift: 65 } } as const
 const climb: KeyPose = {
   body: { at: [0.455, 0.288], lean: 77, nod: -14 },
-  nearLeg: { thigh: 56, shank: -84, slope: 72 },
+  nearLeg: { thigh: 56, shank: -90, slope: 72 },
   farLeg: climberFeet,
   arms: { hand: [0.735, 0.022], open: 90 },
 }
 const climberMiddle: KeyPose = {
   body: { at: [0.452, 0.3], lean: 79, nod: -12 },
-  nearLeg: { thigh: -8, shank: -96, slope: 78 },
-  farLeg: { thigh: -8, shank: -96, slope: 78 },
+  nearLeg: { thigh: 12, shank: -116, slope: 72 },
+  farLeg: { thigh: 12, shank: -116, slope: 72 },
   arms: { hand: [0.735, 0.022], open: 90 },
 }
 const inclineClimb: KeyPose = {
@@ -104,8 +104,20 @@ const crouch: KeyPose = {
   legs: FEET,
   arms: handsDown,
 }
+const footTravels: KeyPose = {
+  body: { at: [-0.03, 0.33], lean: 90, nod: -22 },
+  nearLeg: { thigh: 52, shank: -100, slope: 45 },
+  farLeg: { plant: { sole: [0, 0] } },
+  arms: handsDown,
+}
+const otherTravels: KeyPose = {
+  body: { at: [0.03, 0.335], lean: 86, nod: -16 },
+  nearLeg: { plant: { toes: [-0.37, 0], lift: 65 } },
+  farLeg: { thigh: 42, shank: -100, slope: 48 },
+  arms: handsDown,
+}
 const oneFootBack: KeyPose = {
-  body: { at: [0.0, 0.29], lean: 80, nod: -14 },
+  body: { at: [0.01, 0.32], lean: 84, nod: -16 },
   nearLeg: { plant: { toes: [-0.37, 0], lift: 65 } },
   farLeg: { plant: { sole: [0, 0] } },
   arms: handsDown,
@@ -118,8 +130,9 @@ const longPlank: KeyPose = {
 
 const rollElbows = (upper: number, upperOut: number): KeyPose => ({
   body: UPRIGHT,
-  legs: { plant: { sole: [0, 0] }, toesOut: 24 },
-  arms: { upper, upperOut, forearm: upper + 165, forearmOut: -upperOut * 0.72 },
+  nearLeg: { plant: { sole: [0, 0, 0.075] }, toesOut: 24 },
+  farLeg: { plant: { sole: [0, 0, -0.075] }, toesOut: 24 },
+  arms: { upper, upperOut, forearm: 168, forearmOut: -upperOut * 0.62 },
 })
 
 export const WARM_UP = {
@@ -200,12 +213,12 @@ export const WARM_UP = {
   },
   'shoulder-rolls': {
     description: 'Fingertips on the shoulders, the elbows draw slow circles.',
-    view: 'three-quarter',
+    view: 'front',
     keys: [
-      key(rollElbows(18, 30), 0.8),
-      key(rollElbows(70, 34), 0.8),
-      key(rollElbows(112, 62), 0.8),
-      key(rollElbows(48, 72), 0.8),
+      key(rollElbows(0, 26), 0.8),
+      key(rollElbows(40, 46), 0.8),
+      key(rollElbows(70, 88), 0.8),
+      key(rollElbows(-20, 62), 0.8),
     ],
     still: 1,
   },
@@ -262,13 +275,17 @@ export const WARM_UP = {
     view: 'side',
     keys: [
       key({ ...STAND, arms: openHanging }, 0.9, { part: 'down', end: 'top' }),
-      key(crouch, 0.5, { part: 'down' }),
-      key(oneFootBack, 0.5, { part: 'down' }),
-      key(longPlank, 0.6, { part: 'up', end: 'bottom' }),
-      key(oneFootBack, 0.5, { part: 'up' }),
+      key(crouch, 0.3, { part: 'down' }),
+      key(footTravels, 0.3, { part: 'down' }),
+      key(oneFootBack, 0.3, { part: 'down' }),
+      key(otherTravels, 0.3, { part: 'down' }),
+      key(longPlank, 0.5, { part: 'up', end: 'bottom' }),
+      key(otherTravels, 0.3, { part: 'up' }),
+      key(oneFootBack, 0.3, { part: 'up' }),
+      key(footTravels, 0.3, { part: 'up' }),
       key(crouch, 0.9, { part: 'up' }),
     ],
-    still: 3,
+    still: 5,
   },
 } satisfies Record<string, FigureData>
 
