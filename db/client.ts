@@ -6,7 +6,14 @@ export type Database = PostgresJsDatabase
 /** What data functions take: the pool or a transaction of it. */
 export type DbOrTx = Pick<
   Database,
-  'select' | 'selectDistinct' | 'insert' | 'update' | 'delete' | 'execute' | 'transaction'
+  | 'select'
+  | 'selectDistinct'
+  | 'selectDistinctOn'
+  | 'insert'
+  | 'update'
+  | 'delete'
+  | 'execute'
+  | 'transaction'
 >
 
 export function databaseUrl(): string {

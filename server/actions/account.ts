@@ -1,0 +1,93 @@
+'use server'
+/** Sign-in, sign-out, password, gym. */
+import { headers } from 'next/headers'
+import { redirect } from 'next/navigation'
+import { clearSessionCookie, readSessionCookie, writeSessionCookie } from '@/server/auth/cookie'
+import { digestOf, endSession, endSessions, setSessionGym, startSession } from '@/server/auth/lucia'
+import { hashPassword, verifyPassword } from '@/server/auth/passwords'
+import { checkSignIn } from '@/server/auth/sign-in'
+import { networkAddress, sessionOrThrow } from '@/server/auth/viewer'
+import { AppError, type ActionResult } from '@/server/contract/errors'
+import { changePasswordInput, fieldMessages, safeNext, signInInput } from '@/server/contract/forms'
+import { paths } from '@/server/contract/paths'
+import { defaultDb } from '@/server/data/db'
+import { changeOwnPassword, ownPasswordHash } from '@/server/data/people'
+import { outcome } from './outcome'
+
+/** Fields `email`, `password`, `next`. Redirects where it succeeds. */
+export async function signIn(_before: ActionResult | null, form: FormData): Promise<ActionResult> {
+  const parsed = signInInput.safeParse(Object.fromEntries(form))
+  if (!parsed.success) {
+    return { ok: false, message: 'Two things are needed.', fields: fieldMessages(parsed.error) }
+  }
+  const { email, password, next } = parsed.data
+  const done = await outcome('signIn', async () => {
+    const address = await networkAddress()
+    const { personId } = await checkSignIn(defaultDb(), {
+      email,
+      password,
+      address,
+      now: new Date(),
+    })
+    // A session that this browser had is not carried over: the token is new at every sign-in.
+    const old = await readSessionCookie()
+    if (old) await endSession(digestOf(old))
+    const userAgent = (await headers()).get('user-agent') ?? ''
+    await writeSessionCookie(await startSession(personId, { gymId: null, userAgent }))
+  })
+  if (!done.ok) return done
+  redirect(safeNext(next) ?? paths.home())
+}
+
+/** Ends this session. */
+export async function signOut(): Promise<void> {
+  const token = await readSessionCookie()
+  if (token) await endSession(digestOf(token))
+  await clearSessionCookie()
+  redirect(paths.signIn())
+}
+
+/** Ends every session of the person, this one too. */
+export async function signOutEverywhere(): Promise<void> {
+  const { viewer } = await sessionOrThrow()
+  await endSessions(viewer.personId)
+  await clearSessionCookie()
+  redirect(paths.signIn())
+}
+
+/** Fields `current`, `wanted`, `again`. Other sessions end. */
+export async function changePassword(
+  _before: ActionResult | null,
+  form: FormData,
+): Promise<ActionResult> {
+  return outcome('changePassword', async () => {
+    const { viewer, sessionId } = await sessionOrThrow()
+    const parsed = changePasswordInput.safeParse(Object.fromEntries(form))
+    if (!parsed.success) {
+      throw new AppError('bad-input', 'The password was not changed.', {
+        fields: fieldMessages(parsed.error),
+      })
+    }
+    const db = defaultDb()
+    const kept = await ownPasswordHash(viewer, {}, db)
+    if (!(await verifyPassword(kept, parsed.data.current))) {
+      throw new AppError('bad-input', 'The password was not changed.', {
+        fields: { current: 'That is not your present password.' },
+      })
+    }
+    const passwordHash = await hashPassword(parsed.data.wanted)
+    await changeOwnPassword(viewer, { passwordHash, keepSessionId: sessionId }, db)
+    return undefined
+  })
+}
+
+/** Field `gymId`: another gym that the person belongs to. */
+export async function switchGym(form: FormData): Promise<void> {
+  const { viewer, sessionId } = await sessionOrThrow()
+  const gymId = String(form.get('gymId') ?? '')
+  if (!viewer.gyms.some((gym) => gym.gymId === gymId)) {
+    throw new AppError('not-found', 'You are not in that gym.')
+  }
+  await setSessionGym(sessionId, gymId)
+  redirect(paths.home())
+}

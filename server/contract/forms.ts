@@ -1,0 +1,64 @@
+/** What forms send. Parsed once, at the edge. */
+import { z } from 'zod'
+import { HEALTH_QUESTIONS, type HealthAnswers } from '../engine/fit/screening'
+import { PASSWORD_MOST, passwordProblem } from './passwords'
+
+export const signInInput = z.object({
+  email: z
+    .string()
+    .trim()
+    .min(1, 'Give your e-mail address.')
+    .max(254, 'That is longer than any e-mail address.'),
+  password: z
+    .string()
+    .min(1, 'Give your password.')
+    .max(PASSWORD_MOST, 'That is longer than any password here.'),
+  next: z.string().max(500).optional(),
+})
+
+export const changePasswordInput = z
+  .object({
+    current: z.string().min(1, 'Give your present password.').max(PASSWORD_MOST),
+    wanted: z.string().superRefine((password, context) => {
+      const problem = passwordProblem(password)
+      if (problem) context.addIssue({ code: 'custom', message: problem })
+    }),
+    again: z.string(),
+  })
+  .refine((input) => input.wanted === input.again, {
+    path: ['again'],
+    message: 'The two new passwords differ.',
+  })
+
+const answer = z.enum(['yes', 'no'], { message: 'Answer with yes or no.' })
+export const healthInput = z.object({
+  answers: z
+    .object(Object.fromEntries(HEALTH_QUESTIONS.map((question) => [question, answer])))
+    .transform(
+      (answers) =>
+        Object.fromEntries(
+          HEALTH_QUESTIONS.map((question) => [question, answers[question] === 'yes']),
+        ) as HealthAnswers,
+    ),
+  cleared: z.boolean(),
+  limits: z.array(z.string().max(60)).max(20),
+})
+
+export const kitInput = z.record(z.string().min(1).max(60), z.number().int().min(0).max(20))
+
+/** Only a path of this product may follow a sign-in: `/…`, never `//…` nor another address. */
+export function safeNext(next: string | null | undefined): string | null {
+  if (!next || !next.startsWith('/') || /^\/[/\\]/.test(next) || /[\u0000-\u001f\\]/.test(next))
+    return null
+  return next
+}
+
+/** Messages beside fields, the first of each, by the field's name. */
+export function fieldMessages(error: z.ZodError): Record<string, string> {
+  const fields: Record<string, string> = {}
+  for (const issue of error.issues) {
+    const name = issue.path.map(String).join('.')
+    fields[name] ??= issue.message
+  }
+  return fields
+}

@@ -1,0 +1,365 @@
+import 'server-only'
+/** Recording and reading attempts. */
+import { and, asc, desc, eq, inArray, lt, sql } from 'drizzle-orm'
+import { v7 } from 'uuid'
+import type { DbOrTx } from '@/db/client'
+import { attemptEvents } from '@/db/schema/attempt-events'
+import { attempts } from '@/db/schema/attempts'
+import { auditEntries } from '@/db/schema/audit-entries'
+import { classVersions } from '@/db/schema/class-versions'
+import { hurtHolds } from '@/db/schema/hurt-holds'
+import { memberships } from '@/db/schema/memberships'
+import { people } from '@/db/schema/people'
+import { scheduledClasses } from '@/db/schema/scheduled-classes'
+import type { AttemptDto, RecordEventsInput, RecordEventsResult } from '@/server/contract/attempts'
+import { AppError } from '@/server/contract/errors'
+import type { Viewer } from '@/server/contract/viewer'
+import type { ClassEvent } from '@/server/engine/tally/events'
+import { fold } from '@/server/engine/tally/fold'
+import type { AttemptState } from '@/server/engine/tally/types'
+import { getScheduledClass, visibleTo } from './classes'
+import { timed } from './deadline'
+import { getHealth, openHolds } from './health'
+
+/** Channel on which ids of changed boards are told to every process. */
+export const BOARD_CHANNEL = 'floorside_board'
+
+const STATE_AFTER: Partial<Record<ClassEvent['type'], AttemptState>> = {
+  started: 'in-class',
+  resumed: 'in-class',
+  paused: 'paused',
+  stopped: 'stopped',
+  finished: 'finished',
+}
+
+function byOrder(a: ClassEvent, b: ClassEvent): number {
+  return a.seq - b.seq || (a.id < b.id ? -1 : 1)
+}
+
+/**
+ * Stores events of the viewer's own attempt, each exactly once whatever is repeated, and answers with
+ * the ids that are stored now. The attempt is made by its first events. Throws `not-found` for a class
+ * that is not the viewer's or another member's attempt, `conflict` for another class or version than
+ * the attempt's, `not-allowed` where health answers keep a new attempt from starting.
+ */
+export const recordEvents = timed(
+  async (
+    viewer: Viewer,
+    params: { attemptId: string; input: RecordEventsInput; now: Date },
+    db: DbOrTx,
+  ): Promise<RecordEventsResult> => {
+    const { attemptId, input, now } = params
+    return db.transaction(async (tx) => {
+      const [known] = await tx
+        .select()
+        .from(attempts)
+        .where(eq(attempts.id, attemptId))
+        .for('update')
+      if (known && known.membershipId !== viewer.membershipId) throw notThere()
+      if (
+        known &&
+        (known.scheduledClassId !== input.scheduledClassId || known.versionId !== input.versionId)
+      ) {
+        throw new AppError(
+          'conflict',
+          'These rounds belong to another class than the one recorded here. They stay on this computer.',
+        )
+      }
+      if (!known) await begin(viewer, params, tx)
+      for (const event of input.events) {
+        if (event.type === 'started' && event.version !== input.versionId) {
+          throw new AppError('conflict', 'This class was started on another version of the class.')
+        }
+      }
+      const inserted = await tx
+        .insert(attemptEvents)
+        .values(
+          input.events.map((event) => ({
+            attemptId,
+            id: event.id,
+            seq: event.seq,
+            content: event,
+            receivedAt: now,
+          })),
+        )
+        .onConflictDoNothing()
+        .returning({ id: attemptEvents.id })
+      if (inserted.length > 0)
+        await note(viewer, params, new Set(inserted.map((row) => row.id)), tx)
+      const [highest] = await tx
+        .select({ seq: attemptEvents.seq })
+        .from(attemptEvents)
+        .where(eq(attemptEvents.attemptId, attemptId))
+        .orderBy(desc(attemptEvents.seq))
+        .limit(1)
+      return { stored: input.events.map((event) => event.id), highestSeq: highest?.seq ?? 0 }
+    })
+  },
+)
+
+type RecordParams = { attemptId: string; input: RecordEventsInput; now: Date }
+
+async function begin(
+  viewer: Viewer,
+  { attemptId, input, now }: RecordParams,
+  tx: DbOrTx,
+): Promise<void> {
+  const [scheduled] = await tx
+    .select()
+    .from(scheduledClasses)
+    .where(and(visibleTo(viewer), eq(scheduledClasses.id, input.scheduledClassId)))
+  if (!scheduled || !viewer.roles.includes('member')) throw notThere()
+  if (scheduled.versionId !== input.versionId) {
+    // The class was published anew meanwhile: an attempt keeps the version that it began on.
+    const [version] = await tx
+      .select({ id: classVersions.id })
+      .from(classVersions)
+      .where(and(eq(classVersions.id, input.versionId), eq(classVersions.gymId, viewer.gymId)))
+    const [current] = await tx
+      .select({ classId: classVersions.classId })
+      .from(classVersions)
+      .where(eq(classVersions.id, scheduled.versionId))
+    const [asked] = version
+      ? await tx
+          .select({ classId: classVersions.classId })
+          .from(classVersions)
+          .where(eq(classVersions.id, version.id))
+      : []
+    if (!asked || asked.classId !== current?.classId) {
+      throw new AppError('conflict', 'That is not a version of this class.')
+    }
+  }
+  const health = await getHealth(viewer, { now }, tx)
+  if (health.standing !== 'clear' || health.consentMissing) {
+    throw new AppError(
+      'not-allowed',
+      'The health questions come first. Answer them, then start the class.',
+    )
+  }
+  await tx
+    .insert(attempts)
+    .values({
+      id: attemptId,
+      gymId: viewer.gymId,
+      membershipId: viewer.membershipId,
+      scheduledClassId: scheduled.id,
+      versionId: input.versionId,
+      late: now > scheduled.closesAt,
+      todayNote: input.todayNote?.trim() || null,
+      createdAt: now,
+    })
+    .onConflictDoNothing()
+  const [made] = await tx
+    .select({ membershipId: attempts.membershipId })
+    .from(attempts)
+    .where(eq(attempts.id, attemptId))
+    .for('update')
+  if (made?.membershipId !== viewer.membershipId) throw notThere()
+}
+
+/** What beside the events follows from new ones: the attempt's dates and state, holds, word to the boards. */
+async function note(
+  viewer: Viewer,
+  { attemptId, input, now }: RecordParams,
+  fresh: ReadonlySet<string>,
+  tx: DbOrTx,
+): Promise<void> {
+  const events = input.events.filter((event) => fresh.has(event.id)).sort(byOrder)
+  const started = events.find((event) => event.type === 'started')
+  const finished = events.findLast((event) => event.type === 'finished')
+  const turning = events.findLast((event) => STATE_AFTER[event.type] !== undefined)
+  const state = turning ? STATE_AFTER[turning.type] : undefined
+  // A member's clock may be anything; what lists show is never later than the server's.
+  const said = (wallMs: number) => new Date(Math.min(wallMs, now.getTime())).toISOString()
+  await tx
+    .update(attempts)
+    .set({
+      revision: sql`${attempts.revision} + ${events.length}`,
+      lastEventAt: now,
+      ...(started
+        ? { startedAt: sql`coalesce(${attempts.startedAt}, ${said(started.wallMs)}::timestamptz)` }
+        : {}),
+      ...(finished
+        ? {
+            finishedAt: sql`coalesce(${attempts.finishedAt}, ${said(finished.wallMs)}::timestamptz)`,
+          }
+        : {}),
+      ...(turning && state
+        ? {
+            state: sql`case when ${attempts.stateSeq} < ${turning.seq} then ${state} else ${attempts.state} end`,
+            stateSeq: sql`greatest(${attempts.stateSeq}, ${turning.seq})`,
+          }
+        : {}),
+    })
+    .where(eq(attempts.id, attemptId))
+  const hurts = events.filter((event) => event.type === 'hurt')
+  if (hurts.length > 0) {
+    await tx
+      .insert(hurtHolds)
+      .values(
+        hurts.map((event) => ({
+          id: event.id,
+          membershipId: viewer.membershipId,
+          attemptId,
+          place: event.where,
+          createdAt: now,
+        })),
+      )
+      .onConflictDoNothing()
+  }
+  if (started) {
+    await tx.insert(auditEntries).values({
+      id: v7(),
+      gymId: viewer.gymId,
+      personId: viewer.personId,
+      action: 'attempt.started',
+      subject: attemptId,
+    })
+  }
+  await tx.execute(sql`select pg_notify(${BOARD_CHANNEL}, ${input.scheduledClassId})`)
+}
+
+/** One attempt: the member's own, or any of the gym for its coaches. Throws `not-found` otherwise. */
+export const getAttempt = timed(
+  async (viewer: Viewer, params: { attemptId: string }, db: DbOrTx): Promise<AttemptDto> => {
+    const isCoach = viewer.roles.includes('coach')
+    const [row] = await db
+      .select({ attempt: attempts, memberName: people.name, version: classVersions.content })
+      .from(attempts)
+      .innerJoin(memberships, eq(memberships.id, attempts.membershipId))
+      .innerJoin(people, eq(people.id, memberships.personId))
+      .innerJoin(classVersions, eq(classVersions.id, attempts.versionId))
+      .where(
+        and(
+          eq(attempts.id, params.attemptId),
+          eq(attempts.gymId, viewer.gymId),
+          isCoach ? undefined : eq(attempts.membershipId, viewer.membershipId),
+        ),
+      )
+    if (!row) throw notThere()
+    const { attempt, memberName, version } = row
+    const { scheduledClass } = await getScheduledClass(
+      viewer,
+      { scheduledClassId: attempt.scheduledClassId },
+      db,
+    )
+    const events = await db
+      .select({ event: attemptEvents.content, receivedAt: attemptEvents.receivedAt })
+      .from(attemptEvents)
+      .where(eq(attemptEvents.attemptId, attempt.id))
+      .orderBy(asc(attemptEvents.seq), asc(attemptEvents.id))
+    return {
+      attemptId: attempt.id,
+      membershipId: attempt.membershipId,
+      memberName,
+      scheduledClass,
+      versionId: attempt.versionId,
+      version,
+      late: attempt.late,
+      todayNote: attempt.todayNote,
+      startedAt: attempt.startedAt?.toISOString() ?? null,
+      finishedAt: attempt.finishedAt?.toISOString() ?? null,
+      lastEventAt: attempt.lastEventAt?.toISOString() ?? null,
+      tally: fold(
+        version,
+        events.map((one) => one.event),
+      ),
+      events: events.map((one) => ({ event: one.event, receivedAt: one.receivedAt.toISOString() })),
+      holds: await openHolds(db, attempt.membershipId),
+    }
+  },
+)
+
+/** An attempt in a list of one's own. */
+export interface OwnAttempt {
+  attemptId: string
+  scheduledClassId: string
+  title: string
+  day: string
+  state: AttemptState
+  startedAt: string | null
+  late: boolean
+  rpe: number | null
+}
+
+const ATTEMPTS_A_PAGE = 50
+
+/** The viewer's own attempts, latest first, 50 at a time; `before` is the id of the last one seen (ids are in order of time). */
+export const listOwnAttempts = timed(
+  async (
+    viewer: Viewer,
+    params: { before: string | null },
+    db: DbOrTx,
+  ): Promise<{ attempts: OwnAttempt[]; more: boolean }> => {
+    const rows = await db
+      .select({
+        attempt: attempts,
+        title: sql<string>`${classVersions.content} -> 'spec' ->> 'title'`,
+        day: scheduledClasses.day,
+        rpe: sql<
+          number | null
+        >`(select (${attemptEvents.content} ->> 'rpe')::float from ${attemptEvents} where ${attemptEvents.attemptId} = ${attempts.id} and ${attemptEvents.content} ->> 'type' = 'rated' order by ${attemptEvents.seq} desc limit 1)`,
+      })
+      .from(attempts)
+      .innerJoin(classVersions, eq(classVersions.id, attempts.versionId))
+      .innerJoin(scheduledClasses, eq(scheduledClasses.id, attempts.scheduledClassId))
+      .where(
+        and(
+          eq(attempts.membershipId, viewer.membershipId),
+          params.before === null ? undefined : lt(attempts.id, params.before),
+        ),
+      )
+      .orderBy(desc(attempts.id))
+      .limit(ATTEMPTS_A_PAGE + 1)
+    return {
+      attempts: rows.slice(0, ATTEMPTS_A_PAGE).map(({ attempt, title, day, rpe }) => ({
+        attemptId: attempt.id,
+        scheduledClassId: attempt.scheduledClassId,
+        title,
+        day,
+        state: attempt.state,
+        startedAt: attempt.startedAt?.toISOString() ?? null,
+        late: attempt.late,
+        rpe,
+      })),
+      more: rows.length > ATTEMPTS_A_PAGE,
+    }
+  },
+)
+
+/** The viewer's latest attempt of a scheduled class that is neither finished nor stopped, with its events. */
+export async function openAttemptOf(
+  db: DbOrTx,
+  viewer: Viewer,
+  scheduledClassId: string,
+): Promise<{ attemptId: string; versionId: string; events: ClassEvent[] } | null> {
+  const [attempt] = await db
+    .select({ id: attempts.id, versionId: attempts.versionId })
+    .from(attempts)
+    .where(
+      and(
+        eq(attempts.membershipId, viewer.membershipId),
+        eq(attempts.scheduledClassId, scheduledClassId),
+        inArray(attempts.state, ['in-class', 'paused']),
+      ),
+    )
+    .orderBy(desc(attempts.createdAt))
+    .limit(1)
+  if (!attempt) return null
+  const events = await eventsOf(db, attempt.id)
+  return { attemptId: attempt.id, versionId: attempt.versionId, events }
+}
+
+/** Events of one attempt in their order. */
+export async function eventsOf(db: DbOrTx, attemptId: string): Promise<ClassEvent[]> {
+  const rows = await db
+    .select({ content: attemptEvents.content })
+    .from(attemptEvents)
+    .where(eq(attemptEvents.attemptId, attemptId))
+    .orderBy(asc(attemptEvents.seq), asc(attemptEvents.id))
+  return rows.map((row) => row.content)
+}
+
+function notThere(): AppError {
+  return new AppError('not-found', 'There is no such class or attempt.')
+}
