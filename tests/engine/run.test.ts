@@ -637,3 +637,39 @@ describe('drift', () => {
     expect(member.at().phase).toBe('over')
   })
 })
+
+describe('commands with senseless numbers', () => {
+  it('are refused, change nothing and never throw, at every stage of a class', () => {
+    const strange = [Number.NaN, Infinity, -Infinity, -1, 0.5, 1e308]
+    const stages = [
+      new Member(),
+      new Member().start(),
+      new Member().start().toClass(BODY.pause + 50_000),
+      new Member().start().toClass(BODY.main + 5_000),
+      new Member().start().toClass(LENGTH),
+    ]
+    for (const member of stages) {
+      for (const value of strange) {
+        const commands: Command[] = [
+          { type: 'set-round', block: 'main', round: value, done: true, by: 'member' },
+          { type: 'note-reps', block: 'main', round: value, reps: 1 },
+          { type: 'note-reps', block: 'main', round: 1, reps: value },
+          { type: 'choose-option', block: 'main', station: value, option: 'to-a-chair' },
+          { type: 'note-load', block: 'main', station: value, kilograms: 5 },
+          { type: 'rate', rpe: value === 0.5 ? 10.5 : value },
+          ...(value >= 1 ? [] : [{ type: 'lengthen-rest', ms: value } as const]),
+        ]
+        for (const command of commands) {
+          const applied = apply(member.run, command, member.now)
+          expect(applied).toMatchObject({ events: [], effects: [] })
+          expect(applied.refused).toMatch(/\.$/)
+          expect(applied.run).toBe(member.run)
+        }
+      }
+    }
+  })
+  it('leave the place where it was when the clock of `now` is none', () => {
+    const member = new Member().start().toClass(10_000)
+    for (const now of [Number.NaN, -1e9]) expect(positionAt(member.run, now).classMs).toBe(0)
+  })
+})

@@ -17,9 +17,9 @@ export type HealthQuestion = (typeof HEALTH_QUESTIONS)[number]
 export type HealthAnswers = Record<HealthQuestion, boolean>
 
 /** `blocks`: not played until cleared; `clearance`: cleared or with limits; `note`: the coach is told, nothing else. */
-export type HealthConsequence = 'blocks' | 'clearance' | 'note'
+type HealthConsequence = 'blocks' | 'clearance' | 'note'
 
-export interface HealthQuestionText {
+interface HealthQuestionText {
   question: string
   /** Said beside the question: what a yes changes. */
   change: string
@@ -91,7 +91,6 @@ export const HEALTH_LIMITS = [
   { limit: 'spare-the-injury', label: 'I leave out what troubles the injury' },
   { limit: 'get-up-slowly', label: 'I get up from the floor slowly' },
 ] as const
-export type HealthLimit = (typeof HEALTH_LIMITS)[number]['limit']
 
 const DAY_MS = 86_400_000
 

@@ -1,6 +1,6 @@
 /** Session rating of perceived exertion: how hard the whole class felt, and the load it stands for. */
 
-export interface RpeAnchor {
+interface RpeAnchor {
   rating: number
   /** Null where the scale has a number without words. */
   anchor: string | null

@@ -5,8 +5,8 @@ import { repsInRound, rungCount } from '../spec/reps'
 import type { Block, Reps, Sides, Station, Tempo } from '../spec/schema'
 import type { PublishedVersion } from '../spec/version'
 
-export const DEFAULT_SECONDS_PER_REP = 3
-export const DEFAULT_CHANGE_SECONDS = 4
+const DEFAULT_SECONDS_PER_REP = 3
+const DEFAULT_CHANGE_SECONDS = 4
 /** The least that a tempo with one decimal can say: keeps a forecast of any class finite. */
 const LEAST_SECONDS_PER_REP = 0.1
 
@@ -16,7 +16,7 @@ export interface PaceDefaults {
   changeSeconds?: number | undefined
 }
 
-export interface StationPlan {
+interface StationPlan {
   movement: string
   /** Reps of round `round` (from 1), both sides counted where they are done in turn. */
   repsIn(round: number): number

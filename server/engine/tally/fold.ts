@@ -1,6 +1,6 @@
 /** Events into a tally: pure, the same for any order of arrival and any number of duplicates. */
 import { isRedFlag } from '../fit/stop-signs'
-import { blockPlan, roundReps, type BlockPlan } from '../pace/block-plan'
+import { blockPlan, roundLimit, roundReps, type BlockPlan } from '../pace/block-plan'
 import { AS_PLANNED } from '../spec/movement'
 import { optionsOf } from '../spec/options'
 import type { Block } from '../spec/schema'
@@ -15,7 +15,7 @@ import type { AttemptState, AttemptTally, BlockTally, StationOption } from './ty
 
 const MOST_ROUNDS = 1_000_000
 
-export interface FoldOptions {
+interface FoldOptions {
   /** Reckon every round as planned, whatever options were in force. */
   asPlanned?: boolean
 }
@@ -35,7 +35,9 @@ interface FoldedStation {
 interface FoldedBlock {
   block: Block
   stations: FoldedStation[]
-  /** With the options in force; null where the block has no rounds. */
+  /** How many rounds can come; null where the block has none. */
+  roundLimit: number | null
+  /** With the options in force; made anew at need after one was chosen. */
   plan: BlockPlan | null
   done: Map<number, FoldedRound>
   notes: Map<number, number>
@@ -114,7 +116,8 @@ function emptyBlock(version: PublishedVersion, block: Block): FoldedBlock {
         changes: [{ option: AS_PLANNED, from: 'coach', classMs: 0 }],
       }
     }),
-    plan: blockPlan(version, block),
+    roundLimit: roundLimit(block),
+    plan: null,
     done: new Map(),
     notes: new Map(),
     finishMs: null,
@@ -132,10 +135,19 @@ function usableMs(value: number): number {
   return Number.isFinite(value) && value > 0 ? value : 0
 }
 
-/** The block's plan where the round can come in it. */
-function planFor(block: FoldedBlock | undefined, round: number): BlockPlan | null {
-  if (!block?.plan || !Number.isInteger(round) || round < 1) return null
-  return round <= Math.min(block.plan.roundLimit, MOST_ROUNDS) ? block.plan : null
+function canCome(block: FoldedBlock, round: number): boolean {
+  if (block.roundLimit === null || !Number.isInteger(round) || round < 1) return false
+  return round <= Math.min(block.roundLimit, MOST_ROUNDS)
+}
+
+/** Planned reps of a round with the options in force. */
+function repsOf({ version, options }: Folding, block: FoldedBlock, round: number): number {
+  block.plan ??= blockPlan(
+    version,
+    block.block,
+    options.asPlanned ? [] : block.stations.map((one) => one.changes.at(-1)?.option),
+  )
+  return block.plan ? roundReps(block.plan, round) : 0
 }
 
 function foldEvent(folding: Folding, event: ClassEvent): void {
@@ -149,21 +161,23 @@ function foldEvent(folding: Folding, event: ClassEvent): void {
     case 'started':
       foldStart(folding, event)
       return
-    case 'round-done': {
-      const plan = planFor(block, event.round)
-      if (!block || !plan) return
+    case 'round-done':
+      if (!block || !canCome(block, event.round)) return
       block.undoneSinceFinish.delete(event.round)
       if (block.done.has(event.round)) return
-      block.done.set(event.round, { classMs, by: event.by, reps: roundReps(plan, event.round) })
+      block.done.set(event.round, {
+        classMs,
+        by: event.by,
+        reps: repsOf(folding, block, event.round),
+      })
       return
-    }
     case 'round-undone':
-      if (!block || !planFor(block, event.round)) return
+      if (!block || !canCome(block, event.round)) return
       block.done.delete(event.round)
       if (block.finishMs !== null) block.undoneSinceFinish.add(event.round)
       return
     case 'reps-noted':
-      if (!block || !planFor(block, event.round)) return
+      if (!block || !canCome(block, event.round)) return
       if (Number.isFinite(event.reps) && event.reps >= 0) block.notes.set(event.round, event.reps)
       return
     case 'block-finished':
@@ -175,10 +189,9 @@ function foldEvent(folding: Folding, event: ClassEvent): void {
         block.skipped = { reason: event.reason ?? null }
       }
       return
-    case 'option-chosen': {
-      if (block) chooseOption(folding, block, event.station, event.option, 'chosen', classMs)
+    case 'option-chosen':
+      if (block) chooseOption(block, event.station, event.option, 'chosen', classMs)
       return
-    }
     case 'load-noted':
       if (block?.stations[event.station] && Number.isFinite(event.kilograms)) {
         block.loads.set(event.station, event.kilograms)
@@ -234,12 +247,11 @@ function foldStart(folding: Folding, event: EventOf<'started'>): void {
   if (!Array.isArray(event.options)) return
   for (const chosen of event.options) {
     const block = folding.byId.get(chosen.block)
-    if (block) chooseOption(folding, block, chosen.station, chosen.option, chosen.from, 0)
+    if (block) chooseOption(block, chosen.station, chosen.option, chosen.from, 0)
   }
 }
 
 function chooseOption(
-  folding: Folding,
   block: FoldedBlock,
   stationIndex: number,
   option: string,
@@ -249,12 +261,7 @@ function chooseOption(
   const station = block.stations[stationIndex]
   if (!station?.known.has(option)) return
   station.changes.push({ option, from, classMs })
-  if (!block.plan || folding.options.asPlanned) return
-  block.plan = blockPlan(
-    folding.version,
-    block.block,
-    block.stations.map((one) => one.changes.at(-1)?.option),
-  )
+  block.plan = null
 }
 
 function foldFinish(
@@ -262,8 +269,11 @@ function foldFinish(
   block: FoldedBlock | undefined,
   event: EventOf<'block-finished'>,
 ): void {
-  if (!block?.plan || !Number.isFinite(block.plan.roundLimit) || block.finishMs !== null) return
-  if (!(event.ms >= 0 && event.ms <= block.plan.seconds * 1_000)) return
+  if (!block || block.finishMs !== null || !Number.isFinite(block.roundLimit ?? Infinity)) return
+  const { format } = block.block
+  const seconds =
+    format.type === 'for-time' ? format.cap : format.type === 'rounds' ? format.seconds : 0
+  if (!(event.ms >= 0 && event.ms <= seconds * 1_000)) return
   block.finishMs = event.ms
   edit(folding.version.spec, folding.base, folding.edits, event)
 }

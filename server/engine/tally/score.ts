@@ -4,7 +4,7 @@ import type { ClassEvent } from './events'
 import { fold } from './fold'
 import type { BlockTally } from './types'
 
-export interface BlockScore {
+interface BlockScore {
   block: string
   rounds: number
   reps: number

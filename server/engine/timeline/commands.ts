@@ -10,7 +10,7 @@ import { advance, lowestUndone, planOf, stationsOf, wholeMs } from './place'
 import type { Command, Effect, EventDraft, Position, Run, RunBlock } from './run-types'
 
 /** A second press within this time is one press. */
-export const DOUBLE_PRESS_MS = 1_500
+const DOUBLE_PRESS_MS = 1_500
 
 // What the schema of events takes: a long text is cut rather than a whole event lost at the door.
 const MOST_NOTE = 1_000
@@ -119,6 +119,7 @@ export function carryOut(
         ...(command.hurts
           ? {
               hurts: command.hurts
+                .filter((hurt) => HURT_PLACES.some((place) => place === hurt.where))
                 .slice(0, MOST_HURTS)
                 .map((hurt) => ({ where: hurt.where, ...noted(hurt.note) })),
             }

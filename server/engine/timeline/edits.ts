@@ -5,7 +5,7 @@ import type { BlockSpan, EventDraft, SegmentEdit } from './run-types'
 import type { Segment } from './types'
 
 type AnyEvent = ClassEvent | EventDraft
-export type EditEvent = Extract<
+type EditEvent = Extract<
   AnyEvent,
   { type: 'rest-lengthened' | 'rest-cut' | 'block-skipped' | 'block-finished' }
 >

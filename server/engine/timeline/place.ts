@@ -6,7 +6,7 @@ import type { Place, Position, Run } from './run-types'
 import type { Segment } from './types'
 
 /** How far a rest may be lengthened where the coach gave no `atMost`. */
-export const MOST_ADDED_TO_REST_MS = 300_000
+const MOST_ADDED_TO_REST_MS = 300_000
 
 export function stationsOf(block: Block) {
   return block.format.type === 'rest' ? [] : block.format.stations
