@@ -160,6 +160,8 @@ describe('a run in class time', () => {
       { type: 'rest-lengthened', block: 'main', ms: 7_000 },
     ])
     expect(member.run.timeline.lengthMs).toBe(LENGTH + 7_000)
+    const back = runFromEvents(version, 'v1', settings, member.stored(), 0, null)
+    expect(back.run.timeline).toEqual(member.run.timeline)
   })
 })
 
@@ -410,6 +412,8 @@ describe('stop and this hurts', () => {
     expect(member.send({ type: 'rate', rpe: 11 }).refused).toBe('Give a rating from 0 to 10.')
     expect(member.send({ type: 'rate', rpe: 7, note: 'Enough' }).refused).toBeNull()
     expect(member.send({ type: 'rate', rpe: 6 }).refused).toBeNull()
+    const back = runFromEvents(version, 'v1', settings, member.stored(), 0, null)
+    expect(positionAt(back.run, 0).phase).toBe('over')
   })
   it('records where it hurts with the block and station, without holding the clock', () => {
     const member = new Member().start().toClass(45_000)

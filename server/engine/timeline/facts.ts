@@ -91,6 +91,9 @@ export function reduce(run: Run, event: AnyEvent): Run {
     }
     case 'finished':
       return { ...run, ended: true, resting: null }
+    case 'rated':
+      // Whoever rates a stopped class has left it; the events tell it no other way.
+      return run.halted === 'stopped' ? { ...run, ended: true } : run
     default:
       return run
   }

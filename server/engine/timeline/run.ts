@@ -9,6 +9,7 @@ import { inOrder } from '../tally/order'
 import { carryOut, NOTHING, type Step } from './commands'
 import { compile } from './compile'
 import { dueMarks } from './due-marks'
+import { withEdit } from './edits'
 import { at, editedTimeline, reduce } from './facts'
 import { describe, placeAt, stationsOf, wholeMs } from './place'
 import {
@@ -129,6 +130,7 @@ export function runFromEvents(
   const agoMs = alive && alive.agoMs >= 0 ? alive.agoMs : Infinity
   const lastMs = Number.isFinite(agoMs) ? wholeMs(now) - wholeMs(agoMs) : wholeMs(now)
   let run = newRun(version, versionId, settings)
+  let isLaidOut = true
   for (const event of inOrder(events)) {
     if (event.type === 'started' && !run.clock) {
       run = {
@@ -136,8 +138,18 @@ export function runFromEvents(
         clock: { atMs: lastMs, place: { segment: 0, classMs: 0, briefElapsedMs: 0 } },
       }
     }
+    if (event.type === 'rest-lengthened' && event.classMs === 0) {
+      // 'More time to change' comes as one event a segment: the class is laid out once for them all.
+      const edits = withEdit(version.spec, run.base.segments, run.edits, event)
+      isLaidOut &&= edits === run.edits
+      run = { ...run, edits }
+      continue
+    }
+    if (!isLaidOut) run = laidOut(run)
+    isLaidOut = true
     run = reduce(run.ended ? run : caughtUp(run, event), event)
   }
+  if (!isLaidOut) run = laidOut(run)
   if (!run.clock) return { run, events: [], gap: null }
   if (alive?.place && isAhead(alive.place, run.clock.place)) {
     const { restingSinceMs, ...place } = alive.place
@@ -165,6 +177,10 @@ function pausedAt(run: Run, lastAliveMs: number, agoMs: number | null): Reloaded
   if (!runs || position.halted) return { run, events: [], gap: null }
   const paused = apply(run, { type: 'pause' }, lastAliveMs)
   return { run: paused.run, events: paused.events, gap: { agoMs } }
+}
+
+function laidOut(run: Run): Run {
+  return { ...run, timeline: editedTimeline(run.version, run.base, run.edits) }
 }
 
 function isAhead(place: Place, other: Place): boolean {
