@@ -21,8 +21,8 @@ export const UNITS_PER_STATURE = 1000
 export const GAP = 13
 
 const RADII = {
-  hip: 47,
-  knee: 37,
+  hip: 53,
+  knee: 38,
   calf: 36,
   ankle: 27,
   heel: 24,
@@ -32,15 +32,20 @@ const RADII = {
   wrist: 23,
   hand: 26,
   palm: 17,
-  pelvis: 60,
-  waist: 54,
+  pelvis: 57,
+  waist: 51,
   ribs: 63,
   collar: 44,
   neck: 29,
   head: 55,
 } as const
 
-const YAW = { side: 11, 'three-quarter': 42, front: 90 } as const
+/**
+ * From the side the far limbs are drawn a step ahead of the near ones, which stay on the body: that
+ * tells depth without shading. The other views are as from a distance, turned by these degrees.
+ */
+const SIDE_STEP = { near: 0.12, far: 0.46 } as const
+const YAW = { 'three-quarter': 42, front: 90 } as const
 
 interface Flat {
   x: number
@@ -52,11 +57,11 @@ interface Disc extends Flat {
 
 /** Where a point of the room lies in the drawing. */
 export function project(at: Vec, view: FigureData['view']): Flat {
-  const yaw = YAW[view]
-  return {
-    x: (at.x * cosine(yaw) - at.z * sine(yaw)) * UNITS_PER_STATURE,
-    y: -at.y * UNITS_PER_STATURE,
-  }
+  const x =
+    view === 'side'
+      ? at.x - at.z * (at.z > 0 ? SIDE_STEP.near : SIDE_STEP.far)
+      : at.x * cosine(YAW[view]) - at.z * sine(YAW[view])
+  return { x: x * UNITS_PER_STATURE, y: -at.y * UNITS_PER_STATURE }
 }
 
 const figure = (value: number): string => String(Math.round(value * 10) / 10)
@@ -169,8 +174,8 @@ function bodyPath(joints: Joints, view: FigureData['view']): string {
   const base = project(chest, view)
   // The shoulders and hips seen from the front are wider than the trunk is deep.
   const inward = (point: Vec, middle: Vec, part: number) => between(point, middle, part)
-  const collarNear = at(inward(near.shoulder, chest, 0.22), RADII.collar)
-  const collarFar = at(inward(far.shoulder, chest, 0.22), RADII.collar)
+  const collarNear = at(inward(near.shoulder, chest, 0.4), RADII.collar)
+  const collarFar = at(inward(far.shoulder, chest, 0.4), RADII.collar)
   const hipNear = at(inward(near.hip, pelvis, 0.25), RADII.pelvis)
   const hipFar = at(inward(far.hip, pelvis, 0.25), RADII.pelvis)
   const waistWide = between(near.hip, far.hip, 0.5)
@@ -179,6 +184,8 @@ function bodyPath(joints: Joints, view: FigureData['view']): string {
   const waistFar = at(along(between(far.hip, pelvis, 0.15), toWaist, 1), RADII.waist)
   return (
     taperedPath(collarNear, collarFar) +
+    taperedPath({ ...neckTop, r: RADII.neck }, { ...collarNear, r: RADII.collar - 4 }) +
+    taperedPath({ ...neckTop, r: RADII.neck }, { ...collarFar, r: RADII.collar - 4 }) +
     taperedPath(collarNear, waistNear) +
     taperedPath(collarFar, waistFar) +
     taperedPath(at(ribs, RADII.ribs), at(chest, RADII.collar)) +
@@ -259,6 +266,7 @@ function heldPath(kit: Kit, arm: ArmJoints, view: FigureData['view']): string {
   const forearm = flatUnit(project(arm.elbow, view), grip)
   if (kit.kind === 'kettlebell') return kettlebellPath(grip, forearm)
   if (kit.kind !== 'dumbbell') return ''
+  if (kit.hold === 'end-on') return roundedBar(grip, { x: 1, y: 0 }, 41, 41, 14)
   if (kit.hold === 'hanging') {
     return dumbbellPath({ x: grip.x + forearm.x * 62, y: grip.y + forearm.y * 62 }, forearm)
   }
@@ -278,6 +286,7 @@ export const TABLE_HEIGHT = 0.4
 export const SEAT_HEIGHT = SEAT / 1000
 export const STEP_HEIGHT = 0.16
 const WOOD = 26
+const WALL = 74
 
 function furniturePath(kit: Kit): string {
   const box = (left: number, top: number, right: number, bottom: number) =>
@@ -308,7 +317,12 @@ function furniturePath(kit: Kit): string {
       box(x + 234, -TABLE_HEIGHT * 1000, x + 234 + WOOD, 0)
     )
   }
-  if (kit.kind === 'wall') return box(kit.x * 1000, -1120, kit.x * 1000 + WOOD, 0)
+  if (kit.kind === 'wall') {
+    const face = kit.x * 1000
+    return kit.x > 0
+      ? box(face, -1120, face + WALL, 0)
+      : box(face + WOOD - WALL, -1120, face + WOOD, 0)
+  }
   if (kit.kind === 'step') return box(kit.x * 1000, -STEP_HEIGHT * 1000, kit.x * 1000 + 300, 0)
   if (kit.kind === 'mat') return box(kit.from * 1000, -12, kit.to * 1000, 0)
   return ''
@@ -347,8 +361,10 @@ export function outlineOf(
       .join('')
   const nearKit = held('near')
   const farKit = held('far')
-  const hand = (side: 'near' | 'far') =>
-    discPath({ ...project(joints[side].hand, view), r: RADII.hand })
+  const hand = (side: 'near' | 'far') => {
+    const endOn = kits.some((kit) => holds(kit, side) && 'hold' in kit && kit.hold === 'end-on')
+    return endOn ? '' : discPath({ ...project(joints[side].hand, view), r: RADII.hand })
+  }
   return {
     behind: kits
       .filter((kit) => !('near' in kit && kit.near))
@@ -417,7 +433,8 @@ export function extentOf(poses: readonly Joints[], figureData: FigureData): Exte
       cover({ x: kit.x * 1000, y: 0 }, 0)
       cover({ x: kit.x * 1000 + 300, y: 0 }, 0)
     }
-    if (kit.kind === 'wall') cover({ x: kit.x * 1000 + 13, y: -1100 }, 14)
+    if (kit.kind === 'wall')
+      cover({ x: kit.x * 1000 + (kit.x > 0 ? WALL : WOOD - WALL), y: -1120 }, 0)
     if (kit.kind === 'mat') {
       cover({ x: kit.from * 1000, y: 0 }, 0)
       cover({ x: kit.to * 1000, y: 0 }, 0)

@@ -86,14 +86,13 @@ export function Lane({
     '--present-x': part.toFixed(6),
     fontSize: `${measure.textRem}rem`,
   }
-  const track = bays.map((bay) => (
-    <BayMark
-      key={bay.block}
-      bay={bay}
-      lengthMs={lengthMs}
-      line={presentMs === null ? null : view}
-    />
-  ))
+  const sight: Sight = {
+    lengthMs: Math.max(lengthMs, 1),
+    view,
+    shownPart: lengthMs > 0 ? shownMs / lengthMs : 1,
+    hasLine: presentMs !== null,
+  }
+  const track = bays.map((bay) => <BayMark key={bay.block} bay={bay} sight={sight} />)
   const line = presentMs === null ? null : <PresentLine />
   return (
     <div
@@ -222,6 +221,15 @@ function wordingsOf({ number, title }: Bay): Wording[] {
   return wordings
 }
 
+/** How the lane is seen: what the words have to keep clear of. */
+interface Sight {
+  lengthMs: number
+  view: NonNullable<LaneProps['view']>
+  /** Part of the class that the close view shows. */
+  shownPart: number
+  hasLine: boolean
+}
+
 /** Where a wording stands in its bay, and how much room is left over there. */
 interface Place {
   left: string
@@ -231,34 +239,42 @@ const CLEAR_OF_LINE_EM = 0.35
 
 /**
  * In the bay with the present line the words keep clear of it: before it where they fit, else behind
- * it; in the close view behind it first, since what lies before it slides away.
+ * it; in the close view behind it first, since what lies before it slides away. In the close view
+ * words that the edge of the screen would cut are left out.
  */
-function placeOf(
-  bay: Bay,
-  needEm: number,
-  lengthMs: number,
-  line: LaneProps['view'] | null,
-): Place {
-  if (!line || bay.state !== 'present') return { left: '0px', room: `(100% - ${needEm}em)` }
+function placeOf(bay: Bay, needEm: number, { lengthMs, view, shownPart, hasLine }: Sight): Place {
   const start = bay.startMs / lengthMs
   const width = (bay.endMs - bay.startMs) / lengthMs
-  const at = `((var(--present-x) - ${start.toFixed(6)}) / ${width.toFixed(6)} * 100%)`
+  const inBay = (offset: number) =>
+    `((var(--present-x) - ${(start - offset).toFixed(6)}) / ${width.toFixed(6)} * 100%)`
+  const close = view === 'close'
+  const rightEdge = inBay(shownPart * (1 - CLOSE_AT))
+  const leftEdge = inBay(-shownPart * CLOSE_AT)
+  const uncut = close ? [`${rightEdge} - ${needEm}em`] : []
+  if (!hasLine || bay.state !== 'present') {
+    const rooms = [`100% - ${needEm}em`, ...uncut, ...(close ? [`-1 * ${leftEdge}`] : [])]
+    return { left: '0px', room: `min(${rooms.join(', ')})` }
+  }
+  const at = inBay(0)
   const behind = `(${at} + var(--lane-present) / 2 + ${CLEAR_OF_LINE_EM}em)`
   const before = `(${at} - var(--lane-present) / 2 - ${needEm}em)`
   const after = `(100% - ${behind} - ${needEm}em)`
+  if (!close) {
+    return {
+      left: `clamp(0px, ${before} * -9999, ${behind})`,
+      room: `max(${before}, ${after})`,
+    }
+  }
   return {
-    left:
-      line === 'close'
-        ? `clamp(0px, ${after} * 9999, ${behind})`
-        : `clamp(0px, ${before} * -9999, ${behind})`,
-    room: `max(${before}, ${after})`,
+    left: `clamp(0px, ${after} * 9999, ${behind})`,
+    room: `max(${after}, min(${before}, -1 * ${leftEdge}))`,
   }
 }
 
-function BayNames({ bay, lengthMs, line }: BayMarkProps) {
+function BayNames({ bay, sight }: BayMarkProps) {
   const placed = wordingsOf(bay).map((wording) => ({
     wording,
-    place: placeOf(bay, wording.needEm, lengthMs, line),
+    place: placeOf(bay, wording.needEm, sight),
   }))
   return placed.map(({ wording, place }, index) => {
     const fuller = placed[index - 1]?.place.room
@@ -285,14 +301,13 @@ function BayNames({ bay, lengthMs, line }: BayMarkProps) {
 
 interface BayMarkProps {
   bay: Bay
-  lengthMs: number
-  /** How the present line runs, where there is one. */
-  line: LaneProps['view'] | null
+  sight: Sight
 }
 
 const EDGE = 'bg-line absolute inset-y-0 w-[min(var(--lane-line),16%)]'
 
-function BayMark({ bay, lengthMs, line }: BayMarkProps) {
+function BayMark({ bay, sight }: BayMarkProps) {
+  const { lengthMs } = sight
   return (
     <div
       data-bay={bay.block}
@@ -313,7 +328,7 @@ function BayMark({ bay, lengthMs, line }: BayMarkProps) {
               style={pieceStyle(bay, piece)}
             />
           ))}
-          {bay.paint === 'hatched' ? null : <BayNames bay={bay} lengthMs={lengthMs} line={line} />}
+          {bay.paint === 'hatched' ? null : <BayNames bay={bay} sight={sight} />}
         </div>
       )}
     </div>
@@ -322,7 +337,7 @@ function BayMark({ bay, lengthMs, line }: BayMarkProps) {
 
 function BayTimes({ bays, lengthMs }: { bays: readonly Bay[]; lengthMs: number }) {
   return (
-    <div aria-hidden className="relative h-[1.9em] text-text-quiet tabular-nums">
+    <div aria-hidden className="relative h-[1.9em] condensed text-text-quiet tabular-nums">
       <div className="absolute inset-y-0" style={insets}>
         {bays.map((bay) => {
           const text = clockText(bay.endMs - bay.startMs)

@@ -89,7 +89,7 @@ export type Kit =
   | {
       kind: 'dumbbell' | 'kettlebell'
       hand: 'near' | 'far' | 'both'
-      hold?: 'across' | 'upright' | 'level' | 'hanging'
+      hold?: 'across' | 'upright' | 'level' | 'hanging' | 'end-on'
     }
   /** From a fixed point, or the other hand, to the hand. */
   | { kind: 'band'; from: Point | 'other-hand'; hand: 'near' | 'far' | 'both' }

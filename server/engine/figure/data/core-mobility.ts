@@ -80,7 +80,7 @@ const halfKneelStretch = (thigh: number, lean: number, arm: number): KeyPose => 
   farLeg: { plant: { knee: [0, 0] }, thigh, shank: -108, slope: 78 },
   nearLeg: { plant: { sole: [0.27, 0] } },
   nearArm: { upper: arm, forearm: arm + 4 },
-  farArm: { upper: -8, forearm: 26 },
+  farArm: { hand: [0.26, 0.345] },
 })
 
 const hamstring = (lean: number): KeyPose => ({
@@ -237,7 +237,7 @@ export const CORE_MOBILITY = {
   },
   'chest-opener': {
     description: 'Standing, the arms reach back and the chest lifts.',
-    view: 'side',
+    view: 'three-quarter',
     keys: [
       key({ ...STAND, arms: { upper: 2, forearm: 8 } }, 1.8),
       key(

@@ -158,7 +158,7 @@ export const PUSH_PULL = {
   'lateral-raise': {
     description: 'Standing, dumbbells lift out to the sides to shoulder height.',
     view: 'front',
-    kit: [{ kind: 'dumbbell', hand: 'both' }],
+    kit: [{ kind: 'dumbbell', hand: 'both', hold: 'end-on' }],
     keys: pressKeys(
       withArms(frontStand, { upper: 4, upperOut: 11, forearm: 8, forearmOut: 9 }),
       withArms(frontStand, { upper: 4, upperOut: 86, forearm: 8, forearmOut: 84 }),
