@@ -39,7 +39,11 @@ export interface PlayerState {
   due: { mark: PlacedMark; text: string; sinceMs: number } | null
   /** A sentence for the member about the last command ('Logged a second ago: not counted twice'). */
   notice: { text: string; atMs: number } | null
-  saving: { state: 'saved' | 'saved-here' | 'sending' | 'not-kept'; unsent: number; message: string | null }
+  saving: {
+    state: 'saved' | 'saved-here' | 'sending' | 'not-kept'
+    unsent: number
+    message: string | null
+  }
   sound: 'ready' | 'blocked' | 'off' | 'failed'
   otherTab: boolean
 }

@@ -1,0 +1,45 @@
+/** Marks as they are read and heard. */
+import type { PublishedVersion } from '@/server/engine/spec/version'
+import type { Mark } from '@/server/engine/timeline/types'
+import type { SoundName } from './ports'
+
+const CALL_TEXT: Record<number, string> = { 60: '1 minute', 30: '30 seconds', 10: '10 seconds' }
+
+/** What a call, cue or announcement says; null for a beep and for a cue that is not there. */
+export function markText(version: PublishedVersion, mark: Mark): string | null {
+  switch (mark.what) {
+    case 'beep':
+      return null
+    case 'call':
+      return mark.half ? 'Half-way' : (CALL_TEXT[mark.left] ?? `${mark.left} seconds`)
+    case 'cue':
+      return (
+        version.spec.blocks
+          .find((block) => block.id === mark.block)
+          ?.cues?.find((cue) => cue.id === mark.id)?.text ?? null
+      )
+    case 'next': {
+      const block = version.spec.blocks.find((one) => one.id === mark.block)
+      if (!block) return null
+      if (block.format.type === 'rest') return 'Next: rest'
+      const station = mark.station === undefined ? undefined : block.format.stations[mark.station]
+      const movement = version.movements.find((one) => one.slug === station?.movement)
+      return `Next: ${movement?.name ?? block.title}`
+    }
+  }
+}
+
+/** The sound of a mark; null where it is only seen. Half-way has its beep. */
+export function markSound(mark: Mark): SoundName | null {
+  if (mark.what === 'beep') {
+    return ({ short: 'knock', double: 'half', start: 'bell', end: 'bell-low' } as const)[mark.sound]
+  }
+  if (mark.what !== 'call' || mark.half) return null
+  return mark.left === 60
+    ? 'call-60'
+    : mark.left === 30
+      ? 'call-30'
+      : mark.left === 10
+        ? 'call-10'
+        : null
+}

@@ -1,0 +1,53 @@
+'use client'
+import { useEffect, useState } from 'react'
+import type { StoreApi } from 'zustand'
+import type { PlayerData } from '@/server/contract/classes'
+import { browserSound } from './audio'
+import { browserClaims } from './claims'
+import { deviceId, newId } from './ids'
+import { browserMemory } from './memory'
+import { browserOutbox } from './outbox'
+import { createPlayer } from './player-store'
+import { startTicker } from './ticker'
+import type { PlayerStore } from './types'
+import { browserWakeLock } from './wake-lock'
+
+/** The player's store over this browser, for as long as the component is there; null until it is. */
+export function useBrowserPlayer(data: PlayerData): StoreApi<PlayerStore> | null {
+  const [store, setStore] = useState<StoreApi<PlayerStore> | null>(null)
+  useEffect(() => {
+    const memory = browserMemory()
+    const outbox = browserOutbox(memory, data.membershipId)
+    const player = createPlayer(data, {
+      now: () => Math.round(performance.now()),
+      wall: () => Date.now(),
+      tick: startTicker,
+      sound: browserSound(),
+      memory,
+      claims: browserClaims(),
+      newId,
+      device: deviceId(safeLocalStorage()),
+      kickOutbox: outbox.kick,
+      watchOutbox: outbox.watch,
+      stayAwake: browserWakeLock(),
+    })
+    setStore(player.store)
+    void player.open()
+    return () => {
+      player.close()
+      outbox.close()
+      setStore(null)
+    }
+    // The page renders anew with fresh data only at a navigation, which mounts a new player.
+    // eslint-disable-next-line react-hooks/exhaustive-deps
+  }, [data.scheduledClass.scheduledClassId, data.membershipId])
+  return store
+}
+
+function safeLocalStorage(): Storage | null {
+  try {
+    return window.localStorage
+  } catch {
+    return null
+  }
+}

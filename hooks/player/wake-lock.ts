@@ -1,0 +1,33 @@
+/** Keeps the screen awake in class. Lost at every hide, so it is asked for again; absent on plain http. */
+export function browserWakeLock(): (on: boolean) => void {
+  let isWanted = false
+  let lock: WakeLockSentinel | null = null
+  const ask = () => {
+    if (!isWanted || lock || document.visibilityState !== 'visible') return
+    navigator.wakeLock
+      ?.request('screen')
+      .then((got) => {
+        lock = got
+        got.addEventListener('release', () => {
+          lock = null
+        })
+        if (!isWanted) void got.release()
+      })
+      .catch(() => undefined)
+  }
+  return (on) => {
+    if (on === isWanted) return
+    isWanted = on
+    if (on) {
+      document.addEventListener('visibilitychange', ask)
+      document.addEventListener('keydown', ask)
+      document.addEventListener('pointerdown', ask)
+      ask()
+    } else {
+      document.removeEventListener('visibilitychange', ask)
+      document.removeEventListener('keydown', ask)
+      document.removeEventListener('pointerdown', ask)
+      lock?.release().catch(() => undefined)
+    }
+  }
+}
