@@ -40,9 +40,9 @@ const HANG_DOWN: ArmPose = { upper: -1, forearm: 0 }
 const ROWED: ArmPose = { upper: -76, forearm: -8 }
 
 const supported: KeyPose = {
-  body: { at: [-0.06, 0.468], lean: 66, nod: -12 },
+  body: { at: [-0.06, 0.493], lean: 66, nod: -12 },
   nearLeg: { plant: { sole: [-0.16, 0] } },
-  farLeg: { plant: { sole: [0.12, 0] } },
+  farLeg: { plant: { sole: [0.1, 0] } },
   farArm: { hand: [0.33, 0.29] },
 }
 

@@ -2,7 +2,7 @@ import type { ArmPose, FigureData, Key, KeyPose, LegPose } from '../types'
 import { FEET, HANGING, key, onFeet, STANDING_HIPS, withArms } from './common'
 
 const standing = onFeet(4, -3, 1)
-const deep = onFeet(88, -34, 40, { nod: -16 })
+const deep = onFeet(83, -30, 38, { nod: -16 })
 
 const GOBLET_UP: ArmPose = { upper: 14, forearm: 150 }
 const GOBLET_DOWN: ArmPose = { upper: 30, forearm: 156 }

@@ -100,7 +100,7 @@ const inclineMiddle: KeyPose = {
 const handsDown = { hand: [0.33, 0.022], open: 90 } as const
 const openHanging = { upper: 2, forearm: 12, open: 10 } as const
 const crouch: KeyPose = {
-  body: { at: [-0.05, 0.262], lean: 80, nod: -22 },
+  body: { at: [-0.05, 0.262], lean: 76, round: 34, nod: -30 },
   legs: FEET,
   arms: handsDown,
 }
@@ -132,7 +132,7 @@ const rollElbows = (upper: number, upperOut: number): KeyPose => ({
   body: UPRIGHT,
   nearLeg: { plant: { sole: [0, 0, 0.075] }, toesOut: 24 },
   farLeg: { plant: { sole: [0, 0, -0.075] }, toesOut: 24 },
-  arms: { upper, upperOut, forearm: 168, forearmOut: -upperOut * 0.62 },
+  arms: { upper, upperOut, forearm: 148, forearmOut: -upperOut * 0.5 },
 })
 
 export const WARM_UP = {
