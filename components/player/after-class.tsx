@@ -40,7 +40,7 @@ export function AfterClass() {
           <div>
             <p className="text-text-quiet">{title}</p>
             <h1
-              className="text-[clamp(40px,9vh,110px)] text-balance"
+              className="text-[clamp(36px,min(9vh,11vw),110px)] text-balance"
               style={{ fontStretch: '95%' }}
             >
               {step === 'count'
@@ -371,13 +371,13 @@ function TallyRow({
           ))}
         </ul>
       </div>
-      <div className="h-[clamp(60px,11vh,120px)] min-w-0">
-        {window ? <Rungs {...window} className="h-full w-full" /> : null}
-      </div>
+      {window ? (
+        <Rungs {...window} className="h-[clamp(60px,11vh,120px)] w-full min-w-0" />
+      ) : (
+        <span className="hidden md:block" />
+      )}
       <div className="md:text-right">
-        <p className="figures text-[clamp(36px,6vh,72px)]">
-          {tally.skipped ? 'skipped' : scoreText(tally)}
-        </p>
+        <p className="figures text-[clamp(36px,6vh,72px)]">{scoreOrState(tally, counted)}</p>
         <p className="text-text-quiet">
           {[
             tally.skipped?.reason ? tally.skipped.reason : null,
@@ -394,7 +394,7 @@ function TallyRow({
         </p>
         <p className="text-text-quiet">
           {[
-            expected ? `forecast ${forecastText(expected)}, an estimate` : null,
+            expected && counted ? `forecast ${forecastText(expected)}, an estimate` : null,
             last && counted && !last.skipped ? `last time ${scoreText(last)}` : null,
           ]
             .filter(Boolean)
@@ -403,6 +403,16 @@ function TallyRow({
       </div>
     </li>
   )
+}
+
+function scoreOrState(tally: BlockTally, counted: boolean): string {
+  if (tally.skipped) return 'skipped'
+  if (!tally.over && tally.logged.length === 0 && (tally.pieces?.done ?? 0) === 0) {
+    return 'not reached'
+  }
+  // Where nobody could log, rounds would be a made-up number.
+  if (tally.format === 'rounds' && !counted) return 'done'
+  return scoreText(tally)
 }
 
 function forecastText(expected: BlockForecast): string {

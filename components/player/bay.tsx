@@ -8,6 +8,8 @@ import { usePlayer } from './player-context'
 /** After this a cue is quiet, after the other it is gone. */
 const FRESH_MS = 9_000
 const GONE_MS = 25_000
+/** More than two lines on a laptop at two metres. */
+const LONG_LETTERS = 38
 
 /**
  * The painted line with its corner arc: the present. What is due stands here, large; under it the
@@ -16,14 +18,11 @@ const GONE_MS = 25_000
 export function Bay({
   tone,
   fallback,
-  near = false,
   children,
 }: {
   tone: 'present' | 'rest' | 'stop'
   /** Quiet text where no cue is due: the station's note, or what its movement is about. */
   fallback: string | null
-  /** The fallback is a longer text that nobody has to read from the mat. */
-  near?: boolean
   /** A question of this rest; it stands under what is due. */
   children?: ReactNode
 }) {
@@ -40,7 +39,11 @@ export function Bay({
       style={{ ['--bay-line' as string]: `var(--${tone})` }}
     >
       {text || !children ? (
-        <div className={styles.bayText} data-near={near && !dueText ? '' : undefined}>
+        <div
+          className={styles.bayText}
+          data-near={dueText ? undefined : ''}
+          data-long={dueText && dueText.length > LONG_LETTERS ? '' : undefined}
+        >
           {text ? (
             <p
               key={dueText ? dueKey : 'fallback'}

@@ -208,11 +208,11 @@ export function StateWord({
 }
 
 /** A rest from its beginning to its longest, where it may be cut ('go') and where the present is. */
-export function RestRail({ position }: { position: Position }) {
+export function RestRail({ position, limited }: { position: Position; limited: boolean }) {
   const present = useRef<HTMLSpanElement>(null)
   const segment = position.segment
   const restMs = segment ? segmentMs(segment) : 0
-  const longestMs = restMs + (position.rest?.mayLengthenMs ?? 0)
+  const longestMs = restMs + (limited ? (position.rest?.mayLengthenMs ?? 0) : 0)
   const leastMs = position.rest ? position.elapsedMs + position.rest.mayCutInMs : restMs
   usePaint((now) => {
     if (present.current && longestMs > 0) {
@@ -223,7 +223,7 @@ export function RestRail({ position }: { position: Position }) {
   return (
     <div className="relative h-[clamp(44px,10dvh,120px)] w-full flex-none" aria-hidden="true">
       <div className="absolute inset-x-0 top-[20%] bottom-0 border-[length:var(--weight)] border-t-0 border-text" />
-      {leastMs < longestMs && position.rest ? (
+      {limited && leastMs < longestMs ? (
         <div
           className="absolute top-[20%] bottom-[length:var(--weight)] flex items-center justify-center overflow-hidden border-l-[length:var(--weight)] border-text bg-fill"
           style={{ left: share(leastMs), right: 'var(--weight)' }}
@@ -239,6 +239,14 @@ export function RestRail({ position }: { position: Position }) {
         style={{ left: share(position.elapsedMs) }}
       />
     </div>
+  )
+}
+
+/** Did the coach say how short and how long this rest may be? */
+export function isLimited(block: Block | null): boolean {
+  return (
+    block?.format.type === 'rest' &&
+    (block.format.atLeast !== undefined || block.format.atMost !== undefined)
   )
 }
 

@@ -1,36 +1,66 @@
 'use client'
-import { useRef } from 'react'
+import clsx from 'clsx'
+import { useRef, useState } from 'react'
 import type { PlayerState } from '@/hooks/player/types'
+import type { Position } from '@/server/engine/timeline/run-types'
 import { clockText } from './texts'
 import styles from './floor-plan.module.css'
 import { usePaint } from './use-paint'
-import { usePlayer } from './player-context'
+import { usePlayer, usePlayerStore } from './player-context'
+import { steady } from './steady'
 
 /** How much time the line shows, from the present to its far end. */
 export const LINE_MS = 45_000
 const TICK_MS = 5_000
+/** Room on the line before the next mark that a time, and a text, need at least. */
+const TIME_ROOM_MS = 4_500
+const TEXT_ROOM_MS = 9_000
 
-type Coming = PlayerState['cueLine'][number]
+type Coming = PlayerState['cueLine']
+
+const sameMarks = (one: Coming, other: Coming) =>
+  one.length === other.length &&
+  one.every((each, index) => {
+    const twin = other[index]
+    // Marks keep their distance from one another while the class runs; a jump is drawn anew.
+    return (
+      twin !== undefined &&
+      twin.mark.key === each.mark.key &&
+      Math.floor(twin.dueInMs / 5_000) === Math.floor(each.dueInMs / 5_000)
+    )
+  })
+
+/** The line is a container, so that its own width is the measure. */
+const place = (dueInMs: number, limitMs: number) =>
+  `translateX(${Math.max(0, (dueInMs / limitMs) * 100).toFixed(3)}cqw)`
+
+/** How long the class has run between a position of the store and a painted one. */
+function runSinceMs(stored: Position, painted: Position): number {
+  if (stored.briefLeftMs !== null && painted.briefLeftMs !== null) {
+    return stored.briefLeftMs - painted.briefLeftMs
+  }
+  return painted.classMs - stored.classMs
+}
 
 /** Cues, time calls and what is next, each at its distance in time, sliding towards the present. */
 export function CueLine({ limitMs = LINE_MS }: { limitMs?: number }) {
-  const cueLine = usePlayer((state) => state.cueLine)
+  const store = usePlayerStore()
+  // Rendered when a mark comes or goes; where each stands is painted.
+  const [select] = useState(() => steady((state) => state.cueLine, sameMarks))
+  const cueLine = usePlayer(select)
   const line = useRef<HTMLDivElement>(null)
   const coming = cueLine
     .filter((each) => each.dueInMs > -500 && each.dueInMs < limitMs + 5_000)
     .sort((one, other) => one.dueInMs - other.dueInMs)
 
-  // The store gives times at its own instant; between its answers the line runs on by class time.
-  const knownAt = useRef<{ cueLine: Coming[]; classMs: number } | null>(null)
   usePaint((now) => {
     if (!line.current) return
-    if (knownAt.current?.cueLine !== cueLine) knownAt.current = { cueLine, classMs: now.classMs }
-    const passedMs = Math.max(0, now.classMs - knownAt.current.classMs)
-    const width = line.current.clientWidth
-    for (const element of line.current.querySelectorAll<HTMLElement>('[data-due]')) {
-      const dueInMs = Number(element.dataset['due']) - passedMs
-      const x = Math.max(0, (dueInMs / limitMs) * width)
-      element.style.transform = `translateX(${x.toFixed(1)}px)`
+    const state = store.getState()
+    const sinceMs = state.position ? runSinceMs(state.position, now) : 0
+    const dueIn = new Map(state.cueLine.map((each) => [each.mark.key, each.dueInMs - sinceMs]))
+    for (const element of line.current.querySelectorAll<HTMLElement>('[data-mark]')) {
+      const dueInMs = dueIn.get(element.dataset['mark'] ?? '') ?? 0
+      element.style.transform = place(dueInMs, limitMs)
       element.style.opacity = dueInMs <= 0 ? '0' : '1'
       const clock = element.firstElementChild
       const text = clockText(dueInMs)
@@ -56,16 +86,25 @@ export function CueLine({ limitMs = LINE_MS }: { limitMs?: number }) {
         return (
           <div
             key={each.mark.key}
-            data-due={each.dueInMs}
+            data-mark={each.mark.key}
             className={styles.mark}
-            style={{ maxWidth: `${(Math.min(roomMs, limitMs - each.dueInMs) / limitMs) * 100}%` }}
+            style={{
+              transform: place(each.dueInMs, limitMs),
+              maxWidth: `${(Math.min(roomMs, limitMs - each.dueInMs) / limitMs) * 100}%`,
+            }}
           >
-            <b className="condensed" style={{ fontVariantNumeric: 'tabular-nums' }}>
+            {/* Marks that stand close together keep what there is room for. */}
+            <b
+              className={clsx('condensed', roomMs < TIME_ROOM_MS && 'invisible')}
+              style={{ fontVariantNumeric: 'tabular-nums' }}
+            >
               {clockText(each.dueInMs)}
             </b>
-            <span className="condensed" style={{ fontWeight: 450 }}>
-              {each.text}
-            </span>
+            {roomMs < TEXT_ROOM_MS ? null : (
+              <span className="condensed" style={{ fontWeight: 450 }}>
+                {each.text}
+              </span>
+            )}
           </div>
         )
       })}

@@ -7,7 +7,7 @@ import type { Position, Run } from '@/server/engine/timeline/run-types'
 import { Bay, Notice } from './bay'
 import { ActionButton } from './button'
 import { ClassLane } from './class-lane'
-import { RestRail, restLimits, RunningTime, StateWord, WorkCount } from './count-area'
+import { isLimited, RestRail, restLimits, RunningTime, StateWord, WorkCount } from './count-area'
 import { Countdown } from './countdown'
 import styles from './floor-plan.module.css'
 import { formatLine } from './format-line'
@@ -74,7 +74,6 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
 
   const version = data.version
   const block = version.spec.blocks[position.blockIndex] ?? null
-  const next = nextUp(run, position)
   const nextWork = nextUp(run, position, ['work'])
   const blockViews = useMemo(
     () => (block ? stationViews(version, block, chosen) : []),
@@ -149,6 +148,8 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
                   }
                 : null
 
+  const canLog = kind === 'work' && counted && !afterwards && !position.workedOff
+  const logRound = () => send({ type: 'log-round', by: 'member' })
   const toggleRest = () => {
     if (kind === 'rest') send({ type: 'cut-rest' })
     else if (resting) send({ type: 'end-rest-as-needed' })
@@ -172,7 +173,8 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
   const act = (key: PlayerKey) => {
     switch (key) {
       case 'log-round':
-        return ui.primary()
+        // Who logs a round while resting has still logged it; R alone ends the rest.
+        return resting && canLog ? logRound() : ui.primary()
       case 'undo-round':
         return undo()
       case 'pause':
@@ -222,7 +224,9 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
               repsDone={repsDone}
               tally={blockTally}
             />
-            {kind === 'rest' && !paused && !phone ? <RestRail position={position} /> : null}
+            {kind === 'rest' && !paused && !phone ? (
+              <RestRail position={position} limited={isLimited(block)} />
+            ) : null}
             <div className={clsx(styles.actions, 'relative')}>
               <Notice />
               <div className={styles.primarySlot}>
@@ -236,19 +240,24 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
                   >
                     {phone ? (primary.phoneWords ?? primary.words) : primary.words}
                   </ActionButton>
+                ) : kind === 'count-in' ? (
+                  <p className={clsx('condensed', styles.primaryWord)}>Get ready</p>
                 ) : null}
               </div>
               <div className={styles.secondary}>
                 {kind === 'rest' && !paused ? (
                   <GoButton position={position} onGo={() => send({ type: 'cut-rest' })} />
+                ) : resting && canLog ? (
+                  <ActionButton onClick={logRound} hint="Space">
+                    Log round
+                  </ActionButton>
                 ) : (
                   <ActionButton
                     onClick={toggleRest}
                     hint="R"
-                    disabled={kind !== 'work' || paused || position.workedOff}
-                    aria-pressed={resting}
+                    disabled={kind !== 'work' || paused || position.workedOff || resting}
                   >
-                    {resting ? 'Go on' : 'Rest as needed'}
+                    Rest as needed
                   </ActionButton>
                 )}
                 <ActionButton onClick={() => ui.open('hurt')} hint="H">
@@ -269,7 +278,6 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
             view={view}
             views={blockViews}
             comingViews={comingViews}
-            next={next}
             nextWork={nextWork}
             phone={phone}
             paused={paused}
@@ -291,7 +299,6 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
           <Bay
             tone={kind === 'rest' || kind === 'brief' || paused || resting ? 'rest' : 'present'}
             fallback={quietText(kind, paused, block, view)}
-            near={kind === 'brief'}
           >
             {question ? (
               <RestQuestion
@@ -378,7 +385,7 @@ function CountSlot({
       (position.segment ? position.segment.endMs - position.segment.startMs : 0) < SHORT_REST_MS
     return (
       <StateWord word="Rest">
-        {limits && !short ? (
+        {limits && !short && isLimited(block) ? (
           <>
             <div>shortest {limits.shortest}</div>
             <div>longest {limits.longest}</div>
@@ -387,7 +394,12 @@ function CountSlot({
       </StateWord>
     )
   }
-  if (kind === 'switch') return <StateWord word="Switch" tone="text" />
+  if (kind === 'switch')
+    return (
+      <StateWord word="Change" tone="text">
+        sides
+      </StateWord>
+    )
   if (kind === 'work' && position.workedOff) {
     return (
       <StateWord word="Worked off" tone="done">
@@ -430,16 +442,21 @@ function GoButton({ position, onGo }: { position: Position; onGo: () => void }) 
 
 function thenText(
   kind: Kind,
+  run: Run,
   position: Position,
   views: readonly StationView[],
   focus: number,
-  next: NextUp | null,
-  nextWork: NextUp | null,
 ): string | null {
-  if (position.round !== null && views.length > 1 && kind === 'work') {
+  if (position.round !== null && (kind === 'work' || kind === 'count-in')) {
     const after = views[(focus + 1) % views.length]
-    return after ? `then ${after.reps === null ? '' : ''}${inSentence(after.name)}` : null
+    if (after && views.length > 1) return `then ${inSentence(after.name)}`
+    if (kind === 'count-in') return null
   }
+  // From a count-in or a change of sides the work that comes is on show already: look past it.
+  const shown = kind === 'work' ? null : nextUp(run, position, ['work'])
+  const from = shown ? { ...position, segmentIndex: shown.index } : position
+  const next = nextUp(run, from)
+  const nextWork = nextUp(run, from, ['work'])
   const side = position.segment?.side
   if (nextWork && next && !next.otherBlock && nextWork.side && nextWork.side !== side) {
     if (kind === 'work' && nextWork.station === position.segment?.station) {
@@ -458,11 +475,11 @@ function thenText(
 function RightSide({
   kind,
   position,
+  run,
   block,
   view,
   views,
   comingViews,
-  next,
   nextWork,
   phone,
   paused,
@@ -476,7 +493,6 @@ function RightSide({
   view: StationView | null
   views: readonly StationView[]
   comingViews: readonly StationView[]
-  next: NextUp | null
   nextWork: NextUp | null
   phone: boolean
   paused: boolean
@@ -541,13 +557,10 @@ function RightSide({
     )
   }
   const focus = view?.index ?? 0
-  const then = thenText(kind, position, views, focus, next, nextWork)
+  const then = thenText(kind, run, position, views, focus)
   const turns = position.round !== null && views.length > 1 && kind === 'work'
   const side = kind === 'switch' ? (nextWork?.side ?? null) : (position.segment?.side ?? null)
-  const name =
-    kind === 'switch' && side
-      ? `${side === 'left' ? 'Left' : 'Right'} side: ${inSentence(view?.name ?? '')}`
-      : (view?.name ?? block?.title ?? '')
+  const name = view?.name ?? block?.title ?? ''
   return (
     <MovementColumn
       name={name}

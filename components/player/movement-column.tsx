@@ -75,10 +75,10 @@ export function RepsFigure({
           </>
         ) : side ? (
           <>
-            <div className={clsx('condensed', styles.repsUnit)}>side</div>
             <div className={clsx('condensed font-bold', styles.repsScheme)}>
               {side === 'left' ? 'Left' : 'Right'}
             </div>
+            <div className={clsx('condensed', styles.repsUnit)}>side</div>
           </>
         ) : null}
       </div>

@@ -128,6 +128,8 @@ export function groundOf(
 export const segmentMs = (segment: Segment) => segment.endMs - segment.startMs
 
 export interface NextUp {
+  /** Of its segment. */
+  index: number
   kind: 'work' | 'rest'
   block: Block
   blockIndex: number
@@ -153,6 +155,7 @@ export function nextUp(
     const block = blocks[blockIndex]
     if (!block) return null
     return {
+      index,
       kind: segment.kind,
       block,
       blockIndex,

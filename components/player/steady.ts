@@ -7,7 +7,7 @@ import type { PlayerStore } from '@/hooks/player/types'
 import type { Position } from '@/server/engine/timeline/run-types'
 import { usePlayer } from './player-context'
 
-function steady<T>(select: (state: PlayerStore) => T, same: (one: T, other: T) => boolean) {
+export function steady<T>(select: (state: PlayerStore) => T, same: (one: T, other: T) => boolean) {
   let last: { value: T } | null = null
   return (state: PlayerStore): T => {
     const next = select(state)

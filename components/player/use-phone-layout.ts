@@ -1,19 +1,7 @@
 'use client'
-import { useSyncExternalStore } from 'react'
+import { useMedia } from '@/hooks/use-media'
 
-const QUERY = '(width < 700px)'
-
-function subscribe(tell: () => void): () => void {
-  const list = window.matchMedia?.(QUERY)
-  list?.addEventListener('change', tell)
-  return () => list?.removeEventListener('change', tell)
-}
-
-/** True where the floor plan is the phone's own. */
+/** True where the floor plan is the phone's own; the style sheet draws the line at the same width. */
 export function usePhoneLayout(): boolean {
-  return useSyncExternalStore(
-    subscribe,
-    () => window.matchMedia?.(QUERY).matches ?? false,
-    () => false,
-  )
+  return useMedia('(width < 700px)')
 }
