@@ -1,0 +1,67 @@
+/**
+ * Writes public/sw.js: a class that was loaded comes back at a reload without a network. Its caches are
+ * named by the build, so a new one starts clean. `node scripts/service-worker.mjs BUILD`.
+ */
+import { readdirSync, writeFileSync } from 'node:fs'
+
+const build = process.argv[2] ?? String(Date.now())
+const list = (folder) =>
+  readdirSync(new URL(`../public/${folder}/`, import.meta.url))
+    .filter((name) => /\.(wav|woff2)$/.test(name))
+    .map((name) => `/${folder}/${name}`)
+
+const source = `// Made by scripts/service-worker.mjs; not to be edited.
+const CACHE = 'floorside-${build}'
+const FIXED = ${JSON.stringify([...list('sounds'), ...list('fonts')])}
+const ANSWER_MS = 4000
+
+self.addEventListener('install', (event) => {
+  event.waitUntil(caches.open(CACHE).then((cache) => cache.addAll(FIXED)).then(() => self.skipWaiting()))
+})
+self.addEventListener('activate', (event) => {
+  event.waitUntil(
+    caches.keys()
+      .then((names) => Promise.all(names.filter((name) => name.startsWith('floorside-') && name !== CACHE).map((name) => caches.delete(name))))
+      .then(() => self.clients.claim()),
+  )
+})
+// At sign-out: pages of one person are never shown to the next.
+self.addEventListener('message', (event) => {
+  if (event.data !== 'forget-pages') return
+  event.waitUntil(
+    caches.open(CACHE).then(async (cache) => {
+      for (const request of await cache.keys()) if (new URL(request.url).pathname.startsWith('/play/')) await cache.delete(request)
+    }),
+  )
+})
+
+async function keep(request, answer) {
+  if (answer.ok && !answer.redirected) await (await caches.open(CACHE)).put(request, answer.clone())
+  return answer
+}
+async function fromCacheFirst(request) {
+  return (await caches.match(request)) ?? keep(request, await fetch(request))
+}
+async function fromNetworkFirst(request) {
+  const late = new Promise((_, reject) => setTimeout(() => reject(new Error('late')), ANSWER_MS))
+  const fresh = fetch(request).then((answer) => keep(new Request(new URL(request.url).pathname), answer))
+  try {
+    return await Promise.race([fresh, late])
+  } catch (error) {
+    const kept = await caches.match(new URL(request.url).pathname)
+    if (kept) return kept
+    return fresh
+  }
+}
+
+self.addEventListener('fetch', (event) => {
+  const { request } = event
+  const address = new URL(request.url)
+  if (request.method !== 'GET' || address.origin !== self.location.origin) return
+  // Data of the framework and of our own routes is never kept.
+  if (request.headers.has('rsc') || address.searchParams.has('_rsc') || address.pathname.startsWith('/api/')) return
+  if (request.mode === 'navigate' && address.pathname.startsWith('/play/')) event.respondWith(fromNetworkFirst(request))
+  else if (/^\\/(_next\\/static|sounds|fonts)\\//.test(address.pathname)) event.respondWith(fromCacheFirst(request))
+})
+`
+writeFileSync(new URL('../public/sw.js', import.meta.url), source)
