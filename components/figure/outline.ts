@@ -4,6 +4,15 @@
  * stay filled and one ground-coloured edge runs round the whole part.
  */
 import { ANKLE_HEIGHT, HEAD_HALF_LENGTH, HEEL_BACK } from '@/server/engine/figure/body'
+import {
+  CHAIR_BACK_HEIGHT,
+  CHAIR_DEPTH,
+  SEAT_HEIGHT,
+  STEP_DEPTH,
+  STEP_HEIGHT,
+  TABLE_DEPTH,
+  TABLE_HEIGHT,
+} from '@/server/engine/figure/furniture'
 import type { ArmJoints, FigureData, Joints, Kit, LegJoints } from '@/server/engine/figure/types'
 import {
   along,
@@ -56,7 +65,7 @@ interface Disc extends Flat {
 }
 
 /** Where a point of the room lies in the drawing. */
-export function project(at: Vec, view: FigureData['view']): Flat {
+function project(at: Vec, view: FigureData['view']): Flat {
   const x =
     view === 'side'
       ? at.x - at.z * (at.z > 0 ? SIDE_STEP.near : SIDE_STEP.far)
@@ -67,13 +76,13 @@ export function project(at: Vec, view: FigureData['view']): Flat {
 const figure = (value: number): string => String(Math.round(value * 10) / 10)
 const spot = (x: number, y: number): string => `${figure(x)} ${figure(y)}`
 
-export function discPath({ x, y, r }: Disc): string {
+function discPath({ x, y, r }: Disc): string {
   const arc = `A${figure(r)} ${figure(r)} 0 1 1 `
   return `M${spot(x - r, y)}${arc}${spot(x + r, y)}${arc}${spot(x - r, y)}Z`
 }
 
 /** The outline of two discs and the straight lines that touch both. */
-export function taperedPath(a: Disc, b: Disc): string {
+function taperedPath(a: Disc, b: Disc): string {
   const run = Math.hypot(b.x - a.x, b.y - a.y)
   if (run <= Math.abs(a.r - b.r) + 0.01) return discPath(a.r > b.r ? a : b)
   const heading = Math.atan2(b.y - a.y, b.x - a.x)
@@ -279,12 +288,13 @@ function heldPath(kit: Kit, arm: ArmJoints, view: FigureData['view']): string {
   return dumbbellPath(grip, axis)
 }
 
-const SEAT = 265
-const CHAIR_DEPTH = 235
-const CHAIR_BACK = 500
-export const TABLE_HEIGHT = 0.4
-export const SEAT_HEIGHT = SEAT / 1000
-export const STEP_HEIGHT = 0.16
+const SEAT = SEAT_HEIGHT * UNITS_PER_STATURE
+const DEPTH = CHAIR_DEPTH * UNITS_PER_STATURE
+const BACK = CHAIR_BACK_HEIGHT * UNITS_PER_STATURE
+const TABLE = TABLE_HEIGHT * UNITS_PER_STATURE
+const TABLE_WIDTH = TABLE_DEPTH * UNITS_PER_STATURE
+const STEP = STEP_HEIGHT * UNITS_PER_STATURE
+const STEP_WIDTH = STEP_DEPTH * UNITS_PER_STATURE
 const WOOD = 26
 const WALL = 74
 
@@ -300,21 +310,21 @@ function furniturePath(kit: Kit): string {
     const x = kit.x * 1000
     const way = kit.facing === 'right' ? 1 : -1
     const span = (a: number, b: number) => [Math.min(a, b), Math.max(a, b)] as const
-    const [seatLeft, seatRight] = span(x, x + way * CHAIR_DEPTH)
+    const [seatLeft, seatRight] = span(x, x + way * DEPTH)
     const [backLeft, backRight] = span(x, x + way * WOOD)
-    const [legLeft, legRight] = span(x + way * (CHAIR_DEPTH - WOOD), x + way * CHAIR_DEPTH)
+    const [legLeft, legRight] = span(x + way * (DEPTH - WOOD), x + way * DEPTH)
     return (
       box(seatLeft, -SEAT, seatRight, -SEAT + WOOD) +
-      box(backLeft, -CHAIR_BACK, backRight, 0) +
+      box(backLeft, -BACK, backRight, 0) +
       box(legLeft, -SEAT, legRight, 0)
     )
   }
   if (kit.kind === 'table') {
     const x = kit.x * 1000
     return (
-      box(x, -TABLE_HEIGHT * 1000, x + 300, -TABLE_HEIGHT * 1000 + WOOD) +
-      box(x + 40, -TABLE_HEIGHT * 1000, x + 40 + WOOD, 0) +
-      box(x + 234, -TABLE_HEIGHT * 1000, x + 234 + WOOD, 0)
+      box(x, -TABLE, x + TABLE_WIDTH, -TABLE + WOOD) +
+      box(x + 40, -TABLE, x + 40 + WOOD, 0) +
+      box(x + TABLE_WIDTH - 66, -TABLE, x + TABLE_WIDTH - 66 + WOOD, 0)
     )
   }
   if (kit.kind === 'wall') {
@@ -323,7 +333,7 @@ function furniturePath(kit: Kit): string {
       ? box(face, -1120, face + WALL, 0)
       : box(face + WOOD - WALL, -1120, face + WOOD, 0)
   }
-  if (kit.kind === 'step') return box(kit.x * 1000, -STEP_HEIGHT * 1000, kit.x * 1000 + 300, 0)
+  if (kit.kind === 'step') return box(kit.x * 1000, -STEP, kit.x * 1000 + STEP_WIDTH, 0)
   if (kit.kind === 'mat') return box(kit.from * 1000, -12, kit.to * 1000, 0)
   return ''
 }
@@ -425,13 +435,13 @@ export function extentOf(poses: readonly Joints[], figureData: FigureData): Exte
   }
   for (const kit of figureData.kit ?? []) {
     if (kit.kind === 'chair') {
-      const end = kit.x * 1000 + (kit.facing === 'right' ? 1 : -1) * CHAIR_DEPTH
-      cover({ x: kit.x * 1000, y: -CHAIR_BACK }, 0)
+      const end = kit.x * 1000 + (kit.facing === 'right' ? 1 : -1) * DEPTH
+      cover({ x: kit.x * 1000, y: -BACK }, 0)
       cover({ x: end, y: 0 }, 0)
     }
     if (kit.kind === 'table' || kit.kind === 'step') {
       cover({ x: kit.x * 1000, y: 0 }, 0)
-      cover({ x: kit.x * 1000 + 300, y: 0 }, 0)
+      cover({ x: kit.x * 1000 + (kit.kind === 'table' ? TABLE_WIDTH : STEP_WIDTH), y: 0 }, 0)
     }
     if (kit.kind === 'wall')
       cover({ x: kit.x * 1000 + (kit.x > 0 ? WALL : WOOD - WALL), y: -1120 }, 0)

@@ -91,33 +91,29 @@ export function percent(ms: number, ofMs: number): string {
   return `${ofMs > 0 ? Math.round((ms / ofMs) * 1_000_000) / 10_000 : 0}%`
 }
 
-const NARROW = /[iljtfrI.,:;'’!|()[\] 1]/
-const WIDE = /[mwMWÆŒ@%&—–]/
-/**
- * How wide a name is set, in em of the condensed face, on the generous side: a name is shown only
- * where it surely fits.
- */
+/** Widths in em of the condensed face by kind of letter; the first that matches counts. */
+const LETTER_WIDTHS: readonly (readonly [RegExp, number])[] = [
+  [/[mwMWÆŒ@%&—]/, 0.78],
+  [/[ilj.,:;'’!| ]/, 0.26],
+  [/[tfrI()[\]1-]/, 0.36],
+  [/[A-Z0-9À-Þ×–]/, 0.59],
+]
+const COMMON_WIDTH = 0.485
+
+/** How wide a name is set, in em, a little on the generous side: a name is shown only where it surely fits. */
 export function nameWidthEm(name: string): number {
   let width = 0
   for (const letter of name) {
-    width += WIDE.test(letter)
-      ? 0.84
-      : NARROW.test(letter)
-        ? 0.34
-        : /[A-Z0-9]/.test(letter)
-          ? 0.62
-          : 0.53
+    width += LETTER_WIDTHS.find(([kind]) => kind.test(letter))?.[1] ?? COMMON_WIDTH
   }
   return Math.round(width * 100) / 100
 }
 
-/** A shorter name: what stands before or after a colon, or the first words that say something alone. */
+/** A shorter name that still says what it is: what a colon announces, without 'with …' and the like. */
 export function shortName(title: string): string {
-  const [head = title, tail] = title.split(/:\s+/)
-  const candidate = tail && tail.length <= head.length + 12 ? tail : head
-  const shorter = candidate.split(/\s+(?:and|with|then|for)\s+|,\s+/)[0] ?? candidate
-  const chosen = candidate.length <= 14 ? candidate : shorter
-  return chosen.charAt(0).toUpperCase() + chosen.slice(1)
+  const told = title.split(/:\s+/)
+  const [name = title] = (told[1] ?? title).split(/\s+(?:with|then|for)\s+|,\s+/)
+  return name.charAt(0).toUpperCase() + name.slice(1)
 }
 
 /** 5:00 of 300,000 ms; 1:05:00 of an hour and more. */

@@ -38,18 +38,27 @@ export interface LaneProps {
 }
 
 interface Measure {
-  heightRem: number
-  linePx: number
-  textRem: number
-  presentPx: number
-  overhangPx: number
+  height: string
+  line: string
+  text: string
+  present: string
+  overhang: string
 }
-/** `line`: painted lines of one weight, 4 px at desk size and more on a TV. */
+/** Painted lines of one weight: 4 px on pages; on the player 6 px at 1440 and 8 px at 1920. */
 const MEASURES: Record<NonNullable<LaneProps['size']>, Measure> = {
-  small: { heightRem: 1.5, linePx: 3, textRem: 0.78, presentPx: 7, overhangPx: 5 },
-  head: { heightRem: 2.7, linePx: 4, textRem: 1, presentPx: 11, overhangPx: 9 },
-  tv: { heightRem: 4.6, linePx: 6, textRem: 1.5, presentPx: 13, overhangPx: 12 },
+  small: { height: '1.5rem', line: '3px', text: '0.78rem', present: '7px', overhang: '5px' },
+  head: { height: '2.7rem', line: '4px', text: '1rem', present: '11px', overhang: '9px' },
+  tv: {
+    height: 'clamp(3rem, 5vw, 6rem)',
+    line: 'clamp(4px, 0.417vw, 8px)',
+    text: 'clamp(1rem, 1.35vw, 1.7rem)',
+    present: 'clamp(9px, 0.83vw, 16px)',
+    overhang: 'clamp(8px, 0.8vw, 16px)',
+  },
 }
+
+/** Set by `placePresent` over what was rendered, so that a render never sets the line back. */
+const PRESENT = 'var(--present-now, var(--present-x))'
 
 const FINEST_PART = 1 / 260
 const CLOSE_AT = 0.3
@@ -78,13 +87,13 @@ export function Lane({
   const part =
     presentMs === null || lengthMs === 0 ? 0 : Math.min(1, Math.max(0, presentMs / lengthMs))
   const style: Style = {
-    '--lane-height': `${measure.heightRem}rem`,
-    '--lane-line': `${measure.linePx}px`,
-    '--lane-present': `${measure.presentPx}px`,
-    '--lane-overhang': `${measure.overhangPx}px`,
+    '--lane-height': measure.height,
+    '--lane-line': measure.line,
+    '--lane-present': measure.present,
+    '--lane-overhang': measure.overhang,
     '--lane-inset': inset,
     '--present-x': part.toFixed(6),
-    fontSize: `${measure.textRem}rem`,
+    fontSize: measure.text,
   }
   const sight: Sight = {
     lengthMs: Math.max(lengthMs, 1),
@@ -148,12 +157,12 @@ export function Lane({
 
 const insets: CSSProperties = { left: 'var(--lane-inset)', right: 'var(--lane-inset)' }
 
-const runsAlong: CSSProperties = { transform: 'translateX(calc(var(--present-x) * 100%))' }
+const runsAlong: CSSProperties = { transform: `translateX(calc(${PRESENT} * 100%))` }
 
 const slidesUnder = (lengthMs: number, shownMs: number): CSSProperties => ({
   left: percent(CLOSE_AT, 1),
   width: percent(lengthMs, shownMs),
-  transform: 'translateX(calc(var(--present-x) * -100%))',
+  transform: `translateX(calc(${PRESENT} * -100%))`,
 })
 
 /** Yellow with an edge in ink that also parts it from the lane's own lines. */
@@ -198,7 +207,7 @@ const shownWhere = (room: string): string => `max(0px, calc(${room} * 9999))`
 
 const NUMBER_EM = 1.45
 const SECOND_DIGIT_EM = 0.55
-const EDGE_EM = 0.9
+const EDGE_EM = 0.8
 
 interface Wording {
   number: number | null
@@ -246,7 +255,7 @@ function placeOf(bay: Bay, needEm: number, { lengthMs, view, shownPart, hasLine 
   const start = bay.startMs / lengthMs
   const width = (bay.endMs - bay.startMs) / lengthMs
   const inBay = (offset: number) =>
-    `((var(--present-x) - ${(start - offset).toFixed(6)}) / ${width.toFixed(6)} * 100%)`
+    `((${PRESENT} - ${(start - offset).toFixed(6)}) / ${width.toFixed(6)} * 100%)`
   const close = view === 'close'
   const rightEdge = inBay(shownPart * (1 - CLOSE_AT))
   const leftEdge = inBay(-shownPart * CLOSE_AT)

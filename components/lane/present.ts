@@ -4,5 +4,5 @@
  */
 export function placePresent(lane: HTMLElement, presentMs: number, lengthMs: number): void {
   const part = lengthMs > 0 ? Math.min(1, Math.max(0, presentMs / lengthMs)) : 0
-  lane.style.setProperty('--present-x', part.toFixed(6))
+  lane.style.setProperty('--present-now', part.toFixed(6))
 }

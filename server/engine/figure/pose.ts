@@ -104,7 +104,7 @@ export interface PoseModes {
   far: { leg: 'angles' | 'ankle' | 'toes' | 'knee'; arm: 'angles' | 'hand'; openHand: boolean }
 }
 
-export function direction(pitch: number, out: number, side: SideName): Vec {
+function direction(pitch: number, out: number, side: SideName): Vec {
   return vec(sine(pitch) * cosine(out), -cosine(pitch) * cosine(out), signOf(side) * sine(out))
 }
 

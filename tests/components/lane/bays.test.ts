@@ -113,7 +113,8 @@ describe('bays of a lane', () => {
 
 describe('names on a lane', () => {
   it('shorten to what says something alone', () => {
-    expect(shortName('Ladder: hinge and press')).toBe('Hinge')
+    expect(shortName('Ladder: hinge and press')).toBe('Hinge and press')
+    expect(shortName('Circuit with two dumbbells')).toBe('Circuit')
     expect(shortName('Warm-up')).toBe('Warm-up')
     expect(shortName('Row and lunge')).toBe('Row and lunge')
   })

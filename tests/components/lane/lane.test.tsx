@@ -31,12 +31,16 @@ describe('Lane', () => {
   })
 
   it('is moved without a render', () => {
-    const { getByRole } = render(<Lane segments={SEGMENTS} blocks={BLOCKS} presentMs={0} />)
+    const { getByRole, rerender } = render(
+      <Lane segments={SEGMENTS} blocks={BLOCKS} presentMs={0} />,
+    )
     const lane = getByRole('img')
     placePresent(lane, 100_000, 400_000)
-    expect(lane.style.getPropertyValue('--present-x')).toBe('0.250000')
+    expect(lane.style.getPropertyValue('--present-now')).toBe('0.250000')
+    rerender(<Lane segments={SEGMENTS} blocks={BLOCKS} presentMs={50_000} />)
+    expect(lane.style.getPropertyValue('--present-now')).toBe('0.250000')
     placePresent(lane, 900_000, 400_000)
-    expect(lane.style.getPropertyValue('--present-x')).toBe('1.000000')
+    expect(lane.style.getPropertyValue('--present-now')).toBe('1.000000')
   })
 
   it('paints an empty class without a fault', () => {

@@ -1,5 +1,6 @@
 /** Positions that many figures begin from. */
 import { ANKLE_HEIGHT, SHANK, THIGH } from '../body'
+import { SEAT_HEIGHT } from '../furniture'
 import type { ArmPose, BodyPose, Key, KeyPose, LegPose } from '../types'
 
 /** Hips of a person standing, knees not quite locked. */
@@ -55,7 +56,7 @@ export const ALL_FOURS: KeyPose = {
 
 /** Sitting on a chair whose seat ends at x = 0.07. */
 export const SITTING: KeyPose = {
-  body: { at: [-0.06, 0.328], lean: 2 },
+  body: { at: [-0.06, SEAT_HEIGHT + 0.063], lean: 2 },
   legs: { plant: { sole: [0.2, 0] } },
   arms: HANGING,
 }

@@ -1,3 +1,4 @@
+import { STEP_HEIGHT } from '../furniture'
 import type { ArmPose, FigureData, Key, KeyPose, LegPose } from '../types'
 import { FEET, HANGING, key, onFeet, STANDING_HIPS, withArms } from './common'
 
@@ -261,7 +262,7 @@ export const SQUAT_LUNGE = {
       key(
         {
           body: { at: [0.02, 0.512], lean: 8 },
-          nearLeg: { plant: { sole: [0.2, 0.16] } },
+          nearLeg: { plant: { sole: [0.2, STEP_HEIGHT] } },
           farLeg: { plant: { sole: [0, 0] } },
           ...stepUpArms(-22, 26),
         },
@@ -271,7 +272,7 @@ export const SQUAT_LUNGE = {
       key(
         {
           body: { at: [0.14, 0.6], lean: 10 },
-          nearLeg: { plant: { sole: [0.2, 0.16] } },
+          nearLeg: { plant: { sole: [0.2, STEP_HEIGHT] } },
           farLeg: { thigh: 14, shank: -56, pointed: 14 },
           ...stepUpArms(6, -4),
         },
@@ -280,8 +281,8 @@ export const SQUAT_LUNGE = {
       ),
       key(
         {
-          body: { at: [0.2, STANDING_HIPS + 0.16], lean: 1 },
-          legs: { plant: { sole: [0.2, 0.16] } },
+          body: { at: [0.2, STANDING_HIPS + STEP_HEIGHT], lean: 1 },
+          legs: { plant: { sole: [0.2, STEP_HEIGHT] } },
           ...stepUpArms(2, 4),
         },
         0.7,
@@ -290,7 +291,7 @@ export const SQUAT_LUNGE = {
       key(
         {
           body: { at: [0.13, 0.6], lean: 10 },
-          nearLeg: { plant: { sole: [0.2, 0.16] } },
+          nearLeg: { plant: { sole: [0.2, STEP_HEIGHT] } },
           farLeg: { thigh: 6, shank: -46, pointed: 18 },
           ...stepUpArms(-6, 8),
         },
