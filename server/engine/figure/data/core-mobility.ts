@@ -25,7 +25,7 @@ const deadBugLong: KeyPose = {
   ...onBack,
   nearLeg: { thigh: 176, shank: 92, pointed: 6 },
   farLeg: { thigh: 103, shank: 99, pointed: 10 },
-  nearArm: { upper: 258, forearm: 262 },
+  nearArm: { upper: 243, forearm: 250 },
   farArm: { upper: 178, forearm: 180 },
 }
 const ARMS_DOWN: ArmPose = { upper: 87, forearm: 88, open: 88 }
