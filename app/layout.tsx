@@ -15,7 +15,7 @@ export const viewport: Viewport = {
 export default function RootLayout({ children }: { children: ReactNode }) {
   return (
     <html lang="en-GB" data-ground="birch">
-      <body className="boards min-h-dvh antialiased">{children}</body>
+      <body className="min-h-dvh boards antialiased">{children}</body>
     </html>
   )
 }

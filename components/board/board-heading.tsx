@@ -1,7 +1,7 @@
 import type { BoardDto } from '@/server/contract/board'
 import type { BoardState } from '@/server/contract/board-view'
 import { clockText } from '@/server/engine/tally/score'
-import { dayName, timeOfDay } from './times'
+import { dayName, timeOfDay } from '@/server/contract/format'
 
 interface BoardHeadingProps {
   board: BoardDto

@@ -2,7 +2,7 @@
 import clsx from 'clsx'
 import { useNow } from '@/hooks/use-now'
 import type { LiveState } from '@/hooks/live-channel'
-import { agoText, timeOfDay } from './times'
+import { agoText, timeOfDay } from '@/server/contract/format'
 
 interface LiveLineProps {
   readAt: string

@@ -1,7 +1,7 @@
 import type { BoardDto, BoardRow } from '@/server/contract/board'
 import { boardState, BOARD_STATE_TEXT } from '@/server/contract/board-view'
 import type { BlockShape } from './block-shapes'
-import { agoText, timeOfDay } from './times'
+import { agoText, timeOfDay } from '@/server/contract/format'
 
 interface RowStateProps {
   row: BoardRow

@@ -108,3 +108,13 @@ export async function networkAddress(): Promise<string> {
   const forwarded = (await headers()).get('x-forwarded-for')
   return forwarded?.split(',').at(-1)?.trim() || 'unknown'
 }
+
+/** For pages: what a data function refuses as `not-found` becomes the page's own 404. */
+export async function orNotFound<T>(reading: Promise<T>): Promise<T> {
+  try {
+    return await reading
+  } catch (error) {
+    if (error instanceof AppError && error.code === 'not-found') notFound()
+    throw error
+  }
+}

@@ -1,0 +1,23 @@
+'use client'
+import clsx from 'clsx'
+import Link from 'next/link'
+import { usePathname } from 'next/navigation'
+import type { ReactNode } from 'react'
+
+/** A way in the header; the one that is open is marked by weight and a line. */
+export function NavLink({ href, children }: { href: string; children: ReactNode }) {
+  const pathname = usePathname()
+  const isHere = pathname === href
+  return (
+    <Link
+      href={href}
+      aria-current={isHere ? 'page' : undefined}
+      className={clsx(
+        'flex min-h-12 items-center px-2.5 decoration-3 underline-offset-8 hover:underline',
+        isHere && 'font-bold underline decoration-present',
+      )}
+    >
+      {children}
+    </Link>
+  )
+}

@@ -1,0 +1,74 @@
+/** A block in words, for pages that list a class. */
+import { optionsOf } from '../engine/spec/options'
+import type { AnyStation, Block, Reps } from '../engine/spec/schema'
+import type { PublishedVersion } from '../engine/spec/version'
+import { clockText } from '../engine/tally/score'
+import { plural } from './format'
+
+/** '4, 6, 8 …', '12, 9, 6, 3', '10'. */
+export function repsText(reps: Reps): string {
+  if (typeof reps === 'number') return String(reps)
+  if ('list' in reps) return reps.list.join(', ') + (reps.then === 'done' ? '' : ' …')
+  const shown: number[] = []
+  for (let rep = reps.from; shown.length < 4; rep += reps.step) {
+    const isPast = reps.to !== undefined && (reps.step > 0 ? rep > reps.to : rep < reps.to)
+    if (isPast) break
+    shown.push(rep)
+    if (reps.step === 0) break
+  }
+  const last = shown.at(-1)
+  const isWhole =
+    reps.to !== undefined &&
+    last !== undefined &&
+    (reps.step > 0 ? last + reps.step > reps.to : last + reps.step < reps.to)
+  return shown.join(', ') + (isWhole && reps.then === 'done' ? '' : ' …')
+}
+
+/** '6:00, as many rounds as possible'. */
+export function formatText(block: Block): string {
+  const { format } = block
+  switch (format.type) {
+    case 'rounds':
+      return `${clockText(format.seconds * 1_000)}, as many rounds as possible`
+    case 'for-time':
+      return `${plural(format.rounds, 'round')} for time, at most ${clockText(format.cap * 1_000)}`
+    case 'intervals':
+      return format.rounds === 1 ? 'Once through' : `${plural(format.rounds, 'round')} by the clock`
+    case 'every':
+      return `Every ${clockText(format.seconds * 1_000)}, ${plural(format.times, 'time')}`
+    case 'holds':
+      return 'Holds'
+    case 'rest':
+      return clockText(format.seconds * 1_000)
+  }
+}
+
+/** What a station asks for: '4, 6, 8 … reps, each side', '40 s work, 20 s rest'. */
+export function stationText(station: AnyStation): string {
+  const sides =
+    station.sides === 'each'
+      ? ', each side'
+      : station.sides === 'alternate'
+        ? ', sides in turn'
+        : ''
+  if ('reps' in station)
+    return `${repsText(station.reps)} ${station.reps === 1 ? 'rep' : 'reps'}${sides}`
+  if ('work' in station) {
+    return `${station.work} s work${sides}${station.rest > 0 ? `, ${station.rest} s rest` : ''}`
+  }
+  return `${station.seconds} s${sides}`
+}
+
+/** The movement's name and the names of its options at a station. */
+export function stationNames(
+  version: PublishedVersion,
+  station: AnyStation,
+): { name: string; easier: string[]; harder: string[] } {
+  const movement = version.movements.find((one) => one.slug === station.movement)
+  const options = optionsOf(station, movement)
+  return {
+    name: movement?.name ?? station.movement,
+    easier: options.filter((one) => one.level === 'easier').map((one) => one.name),
+    harder: options.filter((one) => one.level === 'harder').map((one) => one.name),
+  }
+}
