@@ -18,6 +18,7 @@ import { SoundControls } from './sound-panel'
 import { formatLine } from './format-line'
 import { stationAmount } from './station-list'
 import { lengthText, sidesText } from './texts'
+import { useDistanceShare } from './use-distance-share'
 import { useFullScreen } from './use-full-screen'
 
 const heading = 'text-[1.55em]'
@@ -380,6 +381,7 @@ const PRESETS = [
 function ScreenChoice({ goFull, onGoFull }: { goFull: boolean; onGoFull: (on: boolean) => void }) {
   const preferences = usePlayer((state) => state.preferences)
   const set = usePlayer((state) => state.setPreferences)
+  const tooFar = useDistanceShare() > 0.13
   const field = 'border-text bg-raised min-h-12 w-[5.5em] border-3 px-2 tabular-nums'
   return (
     <div className="grid gap-3">
@@ -439,6 +441,11 @@ function ScreenChoice({ goFull, onGoFull }: { goFull: boolean; onGoFull: (on: bo
           8 reps
         </span>
       </p>
+      {tooFar ? (
+        <p className="border-l-8 border-stop pl-3">
+          That is too far for a screen of this size. Stand nearer, or use a larger one.
+        </p>
+      ) : null}
       <Tick on={goFull} onChange={onGoFull} words="Start in full screen" />
       <Tick
         on={preferences.keepHallDark}

@@ -4,10 +4,13 @@ import type { MovementOption } from '@/server/engine/spec/movement'
 import styles from './floor-plan.module.css'
 import { threeOptions, type StationView } from './scene'
 import { REASON_TEXT } from './texts'
-import { useDistanceIsLarge } from './use-distance-is-large'
+import { useDistanceShare } from './use-distance-share'
 
 /** Keys of the three options: easier, as planned, harder. */
 export const OPTION_KEYS = ['1', '2', '3'] as const
+
+/** From this share of the screen's height on, distance text leaves no room for near text beside it. */
+const LARGE_SHARE = 0.066
 
 export function reasonsText(option: MovementOption): string {
   return option.reasons.map((reason) => REASON_TEXT[reason]).join(', ')
@@ -31,7 +34,7 @@ export function OptionColumn({
   /** Phone: one line an option. */
   compact?: boolean
 }) {
-  const distanceIsLarge = useDistanceIsLarge()
+  const distanceIsLarge = useDistanceShare() > LARGE_SHARE
   const three = threeOptions(view)
   const own = view.option && view.option.level !== 'as-planned' ? view.option : null
   const keysOnly = own !== null && distanceIsLarge && !compact

@@ -34,6 +34,16 @@ export function Panel({
       if (before instanceof HTMLElement && before.isConnected) before.focus()
     }
   }, [])
+  useEffect(() => {
+    // Not left to the dialog: some browsers leave full screen with Escape and cancel nothing.
+    const listen = (event: KeyboardEvent) => {
+      if (event.key !== 'Escape') return
+      event.preventDefault()
+      onClose()
+    }
+    document.addEventListener('keydown', listen)
+    return () => document.removeEventListener('keydown', listen)
+  }, [onClose])
   return (
     <dialog
       ref={dialog}
@@ -42,14 +52,6 @@ export function Panel({
       onCancel={(event) => {
         event.preventDefault()
         onClose()
-      }}
-      onKeyDown={(event) => {
-        // Escape is taken here as well: some browsers leave full screen with it and send no cancel.
-        if (event.key === 'Escape') {
-          event.preventDefault()
-          event.stopPropagation()
-          onClose()
-        }
       }}
       className="fixed inset-y-0 right-0 left-auto m-0 h-dvh max-h-none w-full max-w-[max(60vw,700px)] overflow-y-auto overscroll-contain boards p-0 text-text backdrop:bg-[#0e2620]/60"
       style={{ borderLeft: `8px solid var(${alarm ? '--stop' : '--present'})` }}

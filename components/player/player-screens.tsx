@@ -1,4 +1,5 @@
 'use client'
+import { useDistanceText } from '@/hooks/player/use-distance-text'
 import { AfterClass } from './after-class'
 import { BeforeClass } from './before-class'
 import { InClass } from './in-class'
@@ -9,6 +10,9 @@ import { usePlayer } from './player-context'
 export function PlayerScreens({ timeZone }: { timeZone: string }) {
   const stage = usePlayer((state) => state.stage)
   const otherTab = usePlayer((state) => state.otherTab)
+  const inches = usePlayer((state) => state.preferences.screenDiagonalInches)
+  const metres = usePlayer((state) => state.preferences.distanceMetres)
+  useDistanceText(inches, metres)
   if (otherTab) return <OtherTab />
   switch (stage) {
     case 'loading':

@@ -110,7 +110,7 @@ export function fakePlayer(
   const note =
     (name: string) =>
     (...values: unknown[]) => {
-      called.push([name, ...values].join(' '))
+      called.push([name, ...values.filter((value) => typeof value === 'string')].join(' '))
     }
 
   const store = createStore<PlayerStore>()((set) => ({
