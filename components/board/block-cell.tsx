@@ -55,13 +55,14 @@ export function BlockCell({ dto, row, block, shape }: BlockCellProps) {
     )
   }
   const present = presentIn(row, block, shape)
-  const begun = tally.over || present !== null || tally.logged.length > 0
+  const begun =
+    tally.over || present !== null || tally.logged.length > 0 || (tally.pieces?.done ?? 0) > 0
   const score = begun ? scoreText(tally) : ''
   return (
-    <div className="flex items-center gap-2">
+    <div className={shape.counted ? 'flex items-center gap-1.5' : 'space-y-0.5'}>
       {shape.counted ? (
         <RungCell
-          className="h-9 min-w-16 flex-1"
+          className="h-9 min-w-10 flex-1"
           lengthMs={shape.lengthMs}
           rungs={loggedRungs(dto, block, tally, shape)}
           wedge={shape.wedge}
@@ -74,8 +75,8 @@ export function BlockCell({ dto, row, block, shape }: BlockCellProps) {
         <PiecesBar tally={tally} stopped={stoppedIn(row, shape) !== null} />
       )}
       <span className="flex shrink-0 items-center gap-1.5 whitespace-nowrap">
-        <span className="font-display text-[0.95rem] font-semibold tabular-nums">{score}</span>
-        <OptionMarks dto={dto} tally={tally} />
+        <span className="font-display text-[15px] font-semibold tabular-nums">{score}</span>
+        {begun ? <OptionMarks dto={dto} tally={tally} /> : null}
         {tally.countedAfterwards ? (
           <abbr
             title="Counted after class, not pressed in it"
@@ -150,7 +151,7 @@ function RestCell({ tally }: { tally: BlockTally }) {
   const seconds = Math.round(Math.abs(beyondMs) / 1_000)
   return (
     <span className="block text-center text-sm whitespace-nowrap text-text-quiet">
-      {beyondMs > 0 ? `+${seconds} s` : `−${seconds} s`}
+      {beyondMs > 0 ? `+${seconds}` : `−${seconds}`}
     </span>
   )
 }

@@ -27,11 +27,14 @@ export interface BoardTableProps {
   onSort: (sort: BoardView['sort']) => void
 }
 
-/** How wide a block's column is, in rem: what its cell has to show, not its minutes alone. */
-function columnRem(block: Block, shape: BlockShape | undefined): number {
-  if (block.format.type === 'rest') return 3.6
-  if (!shape?.counted) return 8.5
-  return block.kind === 'finisher' ? 10 : 14
+/** Widths in pixels at least: what a cell has to show, not the block's minutes alone. */
+const NAME_PX = 172
+const RPE_PX = 44
+const TO_KNOW_PX = 224
+
+function columnPx(block: Block, shape: BlockShape | undefined): number {
+  if (block.format.type === 'rest') return 36
+  return shape?.counted ? 152 : 74
 }
 
 /** Members by blocks: the class's lane is the head, every row a lane of its own. */
@@ -39,10 +42,24 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
   const shapes = blockShapes(dto)
   const { blocks } = dto.version.spec
   const groups = groupRows(rows, view, nowMs)
+  const widths = blocks.map((block) => columnPx(block, shapes.get(block.id)))
   let number = 0
   return (
     <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="Members by blocks">
-      <table className="w-full min-w-max border-collapse text-left">
+      <table
+        className="w-full table-fixed border-collapse text-left text-[15px]"
+        style={{
+          minWidth: NAME_PX + RPE_PX + TO_KNOW_PX + widths.reduce((sum, one) => sum + one, 0),
+        }}
+      >
+        <colgroup>
+          <col style={{ width: NAME_PX }} />
+          {blocks.map((block, index) => (
+            <col key={block.id} style={{ width: widths[index] }} />
+          ))}
+          <col style={{ width: RPE_PX }} />
+          <col style={{ width: TO_KNOW_PX }} />
+        </colgroup>
         <thead>
           <tr className="border-y-4 border-line">
             <SortHead
@@ -66,7 +83,6 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
                     'relative border-l-4 border-line px-0 py-0',
                     block.format.type === 'rest' && 'text-center',
                   )}
-                  style={{ minWidth: `${columnRem(block, shapes.get(block.id))}rem` }}
                 >
                   <BayHead block={block} number={filled ? number : null} />
                 </SortHead>
@@ -80,7 +96,7 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
             >
               RPE
             </SortHead>
-            <SortHead sort="attention" view={view} onSort={onSort} className="min-w-64 px-3 py-2">
+            <SortHead sort="attention" view={view} onSort={onSort} className="relative px-3 py-2">
               To know
             </SortHead>
           </tr>
@@ -96,9 +112,7 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
               </Cell>
             ))}
             <td className="border-l-4 border-fill px-3">
-              {dto.version.spec.intendedRpe !== undefined
-                ? `${dto.version.spec.intendedRpe} meant`
-                : ''}
+              {dto.version.spec.intendedRpe !== undefined ? `${dto.version.spec.intendedRpe}` : ''}
             </td>
             <td className="px-3 text-sm">An estimate, at the expected tiring</td>
           </tr>
@@ -131,22 +145,20 @@ function Cell({ children }: { children: ReactNode }) {
 }
 
 function BayHead({ block, number }: { block: Block; number: number | null }) {
-  const work = block.kind === 'work'
+  const isRest = block.format.type === 'rest'
+  const isLow = !isRest && number === null && block.kind !== 'finisher'
   return (
-    <span className="block p-1">
+    <span className="block p-1" title={block.title}>
       <span
         className={clsx(
-          'flex h-10 items-center gap-2 overflow-hidden px-2 condensed whitespace-nowrap',
-          work && 'bg-fill',
+          'flex h-10 items-center gap-1.5 overflow-hidden px-1.5 condensed leading-[1.05]',
+          number !== null && 'bg-fill',
           block.kind === 'finisher' && 'hatched',
-          !work &&
-            block.kind !== 'finisher' &&
-            block.format.type !== 'rest' &&
-            'border-b-8 border-fill',
+          isLow && 'border-b-8 border-fill',
         )}
       >
         {number !== null ? <span className="font-black">{number}</span> : null}
-        <span className="truncate">{block.title}</span>
+        <span className={isRest ? 'sr-only' : 'line-clamp-2'}>{block.title}</span>
       </span>
     </span>
   )
@@ -167,7 +179,10 @@ const Row = memo(function Row({ dto, row, shapes, nowMs }: RowProps) {
   const name = <span className="font-semibold">{row.memberName}</span>
   return (
     <tr className={clsx('odd:bg-ground-board', first && state === 'stopped' && 'stopped-row')}>
-      <th scope="row" className="sticky left-0 z-10 bg-inherit px-3 py-1.5 text-left font-normal">
+      <th
+        scope="row"
+        className="sticky left-0 z-10 bg-ground py-1 pr-3 text-left text-base leading-tight font-normal"
+      >
         {row.attemptId ? (
           <Link
             href={paths.boardAttempt(dto.scheduledClass.scheduledClassId, row.attemptId)}
@@ -194,7 +209,7 @@ const Row = memo(function Row({ dto, row, shapes, nowMs }: RowProps) {
           {row.tally?.rating?.rpe ?? ''}
         </span>
       </td>
-      <td className="max-w-96 px-3 py-1.5 align-middle">
+      <td className="px-3 py-1 align-middle">
         {absent ? <span className="sr-only">{BOARD_STATE_TEXT[state]}</span> : null}
         <Remarks remarks={remarksOf(row, dto, nowMs)} />
       </td>

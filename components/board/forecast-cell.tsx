@@ -28,16 +28,16 @@ export function ForecastCell({ dto, block, shape }: ForecastCellProps) {
       ? clockText(forecast.finishMs)
       : `${forecast.rounds} + ${forecast.reps}`
   return (
-    <div className="flex items-center gap-2">
+    <div className="flex items-center gap-1.5">
       <RungCell
-        className="h-9 min-w-16 flex-1"
+        className="h-9 min-w-10 flex-1"
         lengthMs={shape.lengthMs}
         rungs={rungs}
         wedge={shape.wedge}
         longestReps={shape.longestReps}
         label={`Forecast ${score}`}
       />
-      <span className="font-display text-[0.95rem] tabular-nums">{score}</span>
+      <span className="font-display text-[15px] tabular-nums">{score}</span>
     </div>
   )
 }

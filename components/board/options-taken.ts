@@ -29,13 +29,15 @@ export function takenInBlock(dto: BoardDto, tally: BlockTally): TakenOption[] {
   })
 }
 
-/** 'Push-up: hands on a table, reverse lunge: step shorter'; null where all was as planned. */
+/** 'Easier: push-up, reverse lunge'; null where all was as planned. */
 export function optionsTaken(row: BoardRow, dto: BoardDto): string | null {
-  const said = new Set<string>()
-  for (const block of row.tally?.blocks ?? []) {
-    for (const taken of takenInBlock(dto, block)) {
-      said.add(`${taken.movement}: ${taken.option.charAt(0).toLowerCase()}${taken.option.slice(1)}`)
-    }
+  const taken = (row.tally?.blocks ?? []).flatMap((block) => takenInBlock(dto, block))
+  const said = (level: Level, word: string) => {
+    const names = new Set(
+      taken.filter((one) => one.level === level).map((one) => one.movement.toLowerCase()),
+    )
+    return names.size > 0 ? [`${word}: ${[...names].join(', ')}`] : []
   }
-  return said.size > 0 ? [...said].join(', ') : null
+  const parts = [...said('easier', 'Easier'), ...said('harder', 'Harder')]
+  return parts.length > 0 ? parts.join('. ') : null
 }

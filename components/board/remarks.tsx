@@ -1,10 +1,10 @@
 import clsx from 'clsx'
 import type { Remark } from './to-know'
 
-/** Remarks of a row, the worst first; the first two at once, the others when asked for. */
+/** Remarks of a row, the worst first: that one at once, the others when asked for. */
 export function Remarks({ remarks }: { remarks: readonly Remark[] }) {
-  const shown = remarks.slice(0, 2)
-  const rest = remarks.slice(2)
+  const shown = remarks.slice(0, 1)
+  const rest = remarks.slice(1)
   return (
     <>
       {shown.map((remark, index) => (
@@ -28,7 +28,7 @@ function RemarkLine({ remark }: { remark: Remark }) {
   return (
     <p
       className={clsx(
-        'text-[0.95rem] leading-snug',
+        'text-[15px] leading-tight',
         remark.weight === 'stop' && 'font-bold text-stop',
         remark.weight === 'pain' && 'font-bold',
         remark.weight === 'plain' && 'text-text-quiet',
@@ -36,7 +36,7 @@ function RemarkLine({ remark }: { remark: Remark }) {
     >
       {remark.text}
       {remark.more ? (
-        <span className="block text-sm font-normal text-text">{remark.more}</span>
+        <span className="block text-[13px] leading-tight font-normal text-text">{remark.more}</span>
       ) : null}
     </p>
   )

@@ -17,7 +17,7 @@ export function RowState({ row, dto, shapes, nowMs }: RowStateProps) {
     <span
       className={
         state === 'stopped'
-          ? 'block text-sm font-semibold text-stop'
+          ? 'block text-[13px] font-semibold text-stop'
           : 'block text-sm text-text-quiet'
       }
     >

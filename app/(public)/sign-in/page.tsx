@@ -47,6 +47,8 @@ export default async function SignInPage({
             <StillFigure
               key={figure}
               figure={figure}
+              frame="stature"
+              label=""
               className="h-[clamp(10rem,34vh,24rem)] w-auto"
             />
           ))}
