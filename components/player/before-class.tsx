@@ -49,7 +49,7 @@ export function BeforeClass({ timeZone }: { timeZone: string }) {
   return (
     <main className="min-h-dvh boards pb-28 text-[clamp(17px,1.9vh,24px)] md:pb-12">
       <header className="flex flex-wrap items-end justify-between gap-x-10 gap-y-4 px-[clamp(16px,3vw,90px)] pt-[clamp(12px,2.6vh,48px)]">
-        <div className="min-w-0 flex-1 basis-[14em]">
+        <div className="min-w-0 flex-[1.6] basis-[16em]">
           <a
             href={paths.today()}
             className="inline-flex min-h-12 items-center text-rest underline underline-offset-4"
@@ -57,8 +57,13 @@ export function BeforeClass({ timeZone }: { timeZone: string }) {
             Back to today
           </a>
           <h1
-            className="text-[clamp(48px,11vh,128px)] leading-[0.95] text-balance"
-            style={{ fontStretch: '100%', fontWeight: 800 }}
+            className="leading-[0.95] [overflow-wrap:anywhere]"
+            style={{
+              fontStretch: '100%',
+              fontWeight: 800,
+              // Wide letters take 0.66 em: the longest word stays on one line.
+              fontSize: `clamp(34px, min(11vh, ${(36 / (longestWord(spec.title) * 0.66)).toFixed(1)}vw), 128px)`,
+            }}
           >
             {spec.title}
           </h1>
@@ -181,6 +186,9 @@ export function BeforeClass({ timeZone }: { timeZone: string }) {
     </main>
   )
 }
+
+/** Letters of the longest word, so that a title never breaks inside one. */
+const longestWord = (title: string) => Math.max(6, ...title.split(/\s+/).map((word) => word.length))
 
 function Section({ title, children }: { title: string; children: ReactNode }) {
   return (

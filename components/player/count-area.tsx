@@ -138,6 +138,13 @@ export function WorkCount({
       </Count>
     )
   }
+  if (format.type === 'intervals' && format.rounds === 1) {
+    return (
+      <Count label="Station" number={String(station + 1)} of={`of ${format.stations.length}`}>
+        <Pieces of={format.stations.length} present={station} />
+      </Count>
+    )
+  }
   if (format.type === 'intervals') {
     return (
       <Count label="Round" number={String(round)} of={`of ${format.rounds}`}>

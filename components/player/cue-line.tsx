@@ -6,11 +6,14 @@ import type { Position } from '@/server/engine/timeline/run-types'
 import { clockText } from './texts'
 import styles from './floor-plan.module.css'
 import { usePaint } from './use-paint'
+import { usePhoneLayout } from './use-phone-layout'
 import { usePlayer, usePlayerStore } from './player-context'
 import { steady } from './steady'
 
 /** How much time the line shows, from the present to its far end. */
-export const LINE_MS = 45_000
+const LINE_MS = 45_000
+/** A phone's line is short: less time at a width in which words can be read. */
+const PHONE_LINE_MS = 24_000
 const TICK_MS = 5_000
 /** Room on the line before the next mark that a time, and a text, need at least. */
 const TIME_ROOM_MS = 4_500
@@ -43,7 +46,8 @@ function runSinceMs(stored: Position, painted: Position): number {
 }
 
 /** Cues, time calls and what is next, each at its distance in time, sliding towards the present. */
-export function CueLine({ limitMs = LINE_MS }: { limitMs?: number }) {
+export function CueLine() {
+  const limitMs = usePhoneLayout() ? PHONE_LINE_MS : LINE_MS
   const store = usePlayerStore()
   // Rendered when a mark comes or goes; where each stands is painted.
   const [select] = useState(() => steady((state) => state.cueLine, sameMarks))

@@ -22,7 +22,7 @@ export function HurtPanel({ view, onClose }: { view: StationView | null; onClose
   if (where === null) {
     return (
       <Panel title="Where does it hurt?" onClose={onClose}>
-        <ul className="grid grid-cols-[repeat(auto-fill,minmax(12em,1fr))] gap-3">
+        <ul className="grid grid-cols-2 gap-3 md:grid-cols-3">
           {HURT_PLACES.map((place) => (
             <li key={place}>
               <ActionButton

@@ -25,3 +25,13 @@ export function distanceTextPx(screen: Screen): number {
     Math.hypot(screen.widthPx, screen.heightPx) / (screen.diagonalInches * MM_PER_INCH)
   return (heightMm(screen.distanceMetres, CAP_ARC_MINUTES) * pxPerMm) / CAP_RATIO
 }
+
+/** Shorter side, in CSS pixels, below which a touched screen is a phone's. */
+const PHONE_PX = 600
+
+/** The screen that a browser most likely runs on: a phone in the hand, or a laptop at two metres. */
+export function usualScreen(shortSidePx: number, isTouched: boolean) {
+  return isTouched && shortSidePx < PHONE_PX
+    ? { screenDiagonalInches: 6, distanceMetres: 0.4 }
+    : { screenDiagonalInches: 14, distanceMetres: 2 }
+}

@@ -492,7 +492,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
     store,
     async open() {
       const preferences = await memory.preferences(data.membershipId).catch(() => null)
-      set({ preferences: { ...DEFAULT_PREFERENCES, ...preferences } })
+      set({ preferences: { ...DEFAULT_PREFERENCES, ...ports.usualScreen, ...preferences } })
       const { soundVolume, soundOn } = get().preferences
       ports.sound.configure(soundVolume, soundOn)
       unwatch.push(ports.sound.watch((state) => set({ sound: state })))

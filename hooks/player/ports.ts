@@ -71,6 +71,8 @@ export interface ClaimPort {
   claim(attemptId: string, take: boolean, lost: () => void): Promise<Claim | null>
 }
 
+export type UsualScreen = Pick<PlayerPreferences, 'screenDiagonalInches' | 'distanceMetres'>
+
 export interface PlayerPorts {
   /** Whole milliseconds that never go back and know nothing of the computer's clock. */
   now(): number
@@ -80,6 +82,8 @@ export interface PlayerPorts {
   tick(wake: () => void): () => void
   sound: SoundPort
   memory: PlayerMemory
+  /** What the member's screen is taken for until they say better; without it a laptop at two metres. */
+  usualScreen?: UsualScreen
   claims: ClaimPort
   /** UUIDv7. */
   newId(): string

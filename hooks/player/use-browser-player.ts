@@ -4,6 +4,7 @@ import type { StoreApi } from 'zustand'
 import type { PlayerData } from '@/server/contract/classes'
 import { browserSound } from './audio'
 import { browserClaims } from './claims'
+import { usualScreen } from './distance'
 import { deviceId, newId } from './ids'
 import { browserMemory } from './memory'
 import { browserOutbox } from './outbox'
@@ -24,6 +25,10 @@ export function useBrowserPlayer(data: PlayerData): StoreApi<PlayerStore> | null
       tick: startTicker,
       sound: browserSound(),
       memory,
+      usualScreen: usualScreen(
+        Math.min(window.screen.width, window.screen.height),
+        window.matchMedia('(pointer: coarse)').matches,
+      ),
       claims: browserClaims(),
       newId,
       device: deviceId(safeLocalStorage()),
