@@ -74,7 +74,7 @@ export function BlockCell({ dto, row, block, shape }: BlockCellProps) {
       ) : (
         <PiecesBar tally={tally} stopped={stoppedIn(row, shape) !== null} />
       )}
-      <span className="flex shrink-0 items-center gap-1.5 whitespace-nowrap">
+      <span className="flex shrink-0 items-center gap-1 whitespace-nowrap">
         <span className="font-display text-[15px] font-semibold tabular-nums">{score}</span>
         {begun ? <OptionMarks dto={dto} tally={tally} /> : null}
         {tally.countedAfterwards ? (

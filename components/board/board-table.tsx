@@ -114,7 +114,7 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
             <td className="border-l-4 border-fill px-3">
               {dto.version.spec.intendedRpe !== undefined ? `${dto.version.spec.intendedRpe}` : ''}
             </td>
-            <td className="px-3 text-sm">An estimate, at the expected tiring</td>
+            <td className="px-3 text-[13px] leading-tight">An estimate, at the expected tiring</td>
           </tr>
         </tbody>
         {groups.map((group) => (

@@ -26,7 +26,7 @@ export function ClassDays({ classes, hrefOf, remark }: ClassDaysProps) {
               .map((one) => (
                 <li
                   key={one.scheduledClassId}
-                  className="flex min-h-10 flex-wrap items-baseline gap-x-5"
+                  className="grid grid-cols-[1fr_auto] items-baseline gap-x-5 sm:grid-cols-[11rem_1fr_auto]"
                 >
                   <Link
                     href={hrefOf(one.scheduledClassId)}
@@ -38,7 +38,7 @@ export function ClassDays({ classes, hrefOf, remark }: ClassDaysProps) {
                     {lengthText(one.realLengthMs)}
                     {one.coachName ? `, ${one.coachName}` : ''}
                   </span>
-                  <span className="ml-auto text-base">{remark(one)}</span>
+                  <span className="text-right text-base">{remark(one)}</span>
                 </li>
               ))}
           </ul>

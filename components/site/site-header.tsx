@@ -42,7 +42,10 @@ export function SiteHeader({ viewer }: { viewer: Viewer }) {
           </NavLink>
         ))}
         <span className="w-2 sm:w-6" />
-        <NavLink href={paths.account()}>{viewer.name}</NavLink>
+        <NavLink href={paths.account()}>
+          <span className="sm:hidden">Account</span>
+          <span className="hidden sm:inline">{viewer.name}</span>
+        </NavLink>
       </nav>
     </header>
   )

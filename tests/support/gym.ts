@@ -1,0 +1,117 @@
+/** Gyms, people and a class for data tests. Everything is invented. */
+import { v7 } from 'uuid'
+import type { Database } from '@/db/client'
+import { classVersions } from '@/db/schema/class-versions'
+import { gyms } from '@/db/schema/gyms'
+import { healthAnswers } from '@/db/schema/health-answers'
+import { memberships } from '@/db/schema/memberships'
+import { people } from '@/db/schema/people'
+import { scheduledClasses } from '@/db/schema/scheduled-classes'
+import type { Role, Viewer } from '@/server/contract/viewer'
+import {
+  HEALTH_QUESTIONS,
+  type HealthAnswers,
+  type HealthQuestion,
+} from '@/server/engine/fit/screening'
+import type { PublishedVersion } from '@/server/engine/spec/version'
+import type { ClassEvent } from '@/server/engine/tally/events'
+import type { EventDraft } from '@/server/engine/timeline/run-types'
+import { playerFixture } from './player-fixture'
+
+export const NOW = new Date('2026-12-01T12:00:00Z')
+
+export interface TestPerson {
+  viewer: Viewer
+}
+
+export interface TestGym {
+  gymId: string
+  scheduledClassId: string
+  versionId: string
+  version: PublishedVersion
+  person(
+    name: string,
+    roles: Role[],
+    more?: { group?: string; answered?: boolean | HealthQuestion[]; passwordHash?: string },
+  ): Promise<Viewer>
+}
+
+export function answersWith(...yes: HealthQuestion[]): HealthAnswers {
+  return Object.fromEntries(
+    HEALTH_QUESTIONS.map((question) => [question, yes.includes(question)]),
+  ) as HealthAnswers
+}
+
+/** A gym with one class open at `NOW`. `group`: only for that group. */
+export async function makeGym(
+  db: Database,
+  name: string,
+  more: { group?: string } = {},
+): Promise<TestGym> {
+  const gymId = v7()
+  const versionId = v7()
+  const scheduledClassId = v7()
+  const { version } = playerFixture()
+  await db.insert(gyms).values({ id: gymId, name, timeZone: 'Europe/Oslo' })
+  await db.insert(classVersions).values({ id: versionId, gymId, classId: v7(), content: version })
+  await db.insert(scheduledClasses).values({
+    id: scheduledClassId,
+    gymId,
+    versionId,
+    day: '2026-12-01',
+    opensAt: new Date('2026-12-01T05:00:00Z'),
+    closesAt: new Date('2026-12-01T22:00:00Z'),
+    group: more.group ?? null,
+  })
+  return {
+    gymId,
+    scheduledClassId,
+    versionId,
+    version,
+    async person(personName, roles, { group, answered = true, passwordHash = 'none' } = {}) {
+      const personId = v7()
+      const membershipId = v7()
+      const email = `${personId}@example.org`
+      await db.insert(people).values({ id: personId, email, name: personName, passwordHash })
+      await db
+        .insert(memberships)
+        .values({ id: membershipId, gymId, personId, roles, group: group ?? null })
+      if (answered !== false) {
+        await db.insert(healthAnswers).values({
+          id: v7(),
+          membershipId,
+          answers: answersWith(...(answered === true ? [] : answered)),
+          createdAt: new Date(NOW.getTime() - 86_400_000),
+        })
+      }
+      return {
+        personId,
+        membershipId,
+        gymId,
+        roles,
+        name: personName,
+        email,
+        gym: { name, place: '', timeZone: 'Europe/Oslo' },
+        gyms: [{ gymId, name }],
+      }
+    },
+  }
+}
+
+/** Stamps drafts as a device would, from `seq` on. */
+export function stamped(
+  drafts: readonly EventDraft[],
+  device = 'device-a',
+  fromSeq = 1,
+): ClassEvent[] {
+  return drafts.map(
+    (draft, index) =>
+      ({
+        ...draft,
+        id: v7(),
+        device,
+        seq: fromSeq + index,
+        wallMs: NOW.getTime() + index * 1_000,
+      }) as ClassEvent,
+  )
+}
