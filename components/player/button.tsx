@@ -24,7 +24,7 @@ export function ActionButton({
       className={clsx(
         'inline-flex min-h-12 min-w-12 items-center justify-center gap-[0.5em] px-[0.7em] py-[0.3em] condensed leading-none disabled:cursor-not-allowed',
         look === 'primary' &&
-          'border-[max(3px,0.35vw)] border-ground bg-button text-on-button outline-[max(4px,0.45vw)] outline-present outline-solid disabled:opacity-60',
+          'border-[max(3px,0.35vw)] border-ground bg-button text-on-button outline-[max(4px,0.45vw)] outline-present outline-solid focus-visible:outline-text disabled:opacity-60',
         look === 'framed' && 'border-[max(3px,0.3vw)] border-line text-text hover:bg-fill',
         look === 'stop' &&
           'border-[max(3px,0.3vw)] border-stop text-text hover:bg-stop hover:text-ground',

@@ -211,7 +211,15 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
   return (
     <PlayerUiContext value={ui}>
       <PlayerFrame ground={ground} idle={idle}>
-        <div className={styles.plan} data-kind={kind}>
+        <div
+          className={styles.plan}
+          data-kind={kind}
+          data-frame={
+            ground === 'hall' && (kind === 'rest' || resting || repsDone || paused)
+              ? 'rest'
+              : undefined
+          }
+        >
           <StatusStrip phone={phone} paused={paused} canUndo={canUndo} onUndo={undo} />
           <section className={styles.time} aria-label="Time">
             <Countdown position={position} />
@@ -237,6 +245,7 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
                     onClick={primary.act}
                     className={styles.primary}
                     data-testid="primary"
+                    data-first=""
                   >
                     {phone ? (primary.phoneWords ?? primary.words) : primary.words}
                   </ActionButton>
@@ -463,7 +472,7 @@ function thenText(
       return `then ${nextWork.side} side`
     }
   }
-  if (!next) return 'the last one'
+  if (!next) return position.round === null ? 'the last one' : 'the last block'
   if (next.otherBlock) {
     return next.kind === 'rest' ? 'then rest' : `then ${inSentence(next.block.title)}`
   }

@@ -5,7 +5,7 @@ import type { Ground } from './scene'
 import styles from './floor-plan.module.css'
 
 /** From this size on a screen is a television: nothing near its edges, no hover. */
-const TV_INCHES = 28
+export const TV_INCHES = 28
 
 /** The floor itself: its ground, the situation it is drawn for, and what covers it. */
 export function PlayerFrame({

@@ -97,36 +97,57 @@ export function BriefStations({ views }: { views: readonly StationView[] }) {
   const drawn = views.length <= 4
   return (
     <div className={styles.stations}>
-      <ul
-        className={clsx(
-          'grid h-full min-h-0 min-w-0',
-          drawn ? 'auto-cols-fr grid-flow-col' : 'auto-rows-fr grid-cols-2 overflow-y-auto',
-        )}
-      >
-        {views.map((view) => (
-          <li
-            key={view.key}
-            className="grid min-h-0 min-w-0 grid-rows-[minmax(0,1fr)_auto] border-line not-first:border-l-[length:calc(var(--weight)*0.6)]"
-          >
-            <div className={clsx(styles.figure, !drawn && 'hidden')} style={{ gridArea: 'auto' }}>
-              <StationFigure view={view} figure={figureOf(view)} moving side={null} />
-            </div>
-            <button
-              type="button"
-              onClick={() => ui.open('options', view.key)}
-              className="min-h-12 min-w-0 px-[0.6em] py-[0.3em] text-left leading-[1.05] hover:bg-fill"
+      {drawn ? (
+        <ul className="grid h-full min-h-0 min-w-0 auto-cols-fr grid-flow-col">
+          {views.map((view) => (
+            <li
+              key={view.key}
+              className="grid min-h-0 min-w-0 grid-rows-[minmax(0,1fr)_auto] border-line not-first:border-l-[length:calc(var(--weight)*0.6)]"
             >
-              <span className="block truncate condensed text-[length:calc(var(--near)*1.1)] font-bold">
+              <div className={styles.figure} style={{ gridArea: 'auto' }}>
+                <StationFigure view={view} figure={figureOf(view)} moving side={null} />
+              </div>
+              <button
+                type="button"
+                onClick={() => ui.open('options', view.key)}
+                className="min-h-12 min-w-0 px-[0.6em] py-[0.3em] text-left leading-[1.05] hover:bg-fill"
+              >
+                <StationWords view={view} />
+              </button>
+            </li>
+          ))}
+        </ul>
+      ) : (
+        <ol className="grid h-full min-h-0 min-w-0 auto-rows-max grid-cols-2 content-end gap-x-4 overflow-y-auto md:grid-cols-3">
+          {views.map((view) => (
+            <li key={view.key} className="min-w-0">
+              <button
+                type="button"
+                onClick={() => ui.open('options', view.key)}
+                aria-label={`${stationAmount(view)} ${view.name}, ${underline(view) || 'as planned'}`}
+                className="block min-h-12 w-full truncate text-left condensed text-[length:var(--near)] leading-[1.1] hover:bg-fill"
+              >
                 <span className="mr-[0.35em] figures">{stationAmount(view)}</span>
                 {view.name}
-              </span>
-              <span className="block truncate pb-[0.1em] condensed text-[length:calc(var(--near)*0.85)] font-medium text-text-quiet">
-                {[sidesText(view.sides), optionLine(view)].filter(Boolean).join(', ')}
-              </span>
-            </button>
-          </li>
-        ))}
-      </ul>
+              </button>
+            </li>
+          ))}
+        </ol>
+      )}
     </div>
+  )
+}
+
+function StationWords({ view }: { view: StationView }) {
+  return (
+    <>
+      <span className="block truncate condensed text-[length:calc(var(--near)*1.1)] font-bold">
+        <span className="mr-[0.35em] figures">{stationAmount(view)}</span>
+        {view.name}
+      </span>
+      <span className="block truncate pb-[0.1em] condensed text-[length:calc(var(--near)*0.85)] font-medium text-text-quiet">
+        {[sidesText(view.sides), optionLine(view)].filter(Boolean).join(', ')}
+      </span>
+    </>
   )
 }
