@@ -7,7 +7,7 @@ export interface Box {
   right: number
   bottom: number
 }
-export type Direction = 'left' | 'right' | 'up' | 'down'
+type Direction = 'left' | 'right' | 'up' | 'down'
 
 const KEYS: Record<string, Direction> = {
   ArrowLeft: 'left',

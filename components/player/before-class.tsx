@@ -220,7 +220,7 @@ function StartButton({ bar, onStart }: { bar: string | null; onStart: () => void
   )
 }
 
-export function Choice({
+function Choice({
   chosen,
   onChoose,
   children,
@@ -358,7 +358,7 @@ function CountingChoice() {
   )
 }
 
-export function Tick({
+function Tick({
   on,
   onChange,
   words,

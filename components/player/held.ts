@@ -4,8 +4,7 @@ import { easierFor, HURT_PLACE_TEXT } from '@/server/engine/fit/hurt'
 import type { ClassEvent } from '@/server/engine/tally/events'
 import type { StationView } from './scene'
 
-export const isOpenHold = (hold: HurtHold) =>
-  hold.memberClearedAt === null || hold.coachClearedAt === null
+const isOpenHold = (hold: HurtHold) => hold.memberClearedAt === null || hold.coachClearedAt === null
 
 /** The hold from an earlier class that this station is under, or null. */
 export function holdOn(data: PlayerData, view: StationView): HurtHold | null {

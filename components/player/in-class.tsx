@@ -1,6 +1,6 @@
 'use client'
 import clsx from 'clsx'
-import { useCallback, useMemo, useState, type ReactNode } from 'react'
+import { useCallback, useState, type ReactNode } from 'react'
 import type { StationKey } from '@/hooks/player/types'
 import type { Block } from '@/server/engine/spec/schema'
 import type { Position, Run } from '@/server/engine/timeline/run-types'
@@ -40,7 +40,7 @@ import { BriefStations, ComingStations, stationAmount } from './station-list'
 import { StatusStrip } from './status-strip'
 import { useSteadyPosition } from './steady'
 import { StopScreen } from './stop-screen'
-import { clockText, elapsedText, inSentence, plural } from './texts'
+import { clockText, inSentence, plural } from './texts'
 import { useFullScreen } from './use-full-screen'
 import { useIdle } from './use-idle'
 import { usePhoneLayout } from './use-phone-layout'
@@ -75,10 +75,7 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
   const version = data.version
   const block = version.spec.blocks[position.blockIndex] ?? null
   const nextWork = nextUp(run, position, ['work'])
-  const blockViews = useMemo(
-    () => (block ? stationViews(version, block, chosen) : []),
-    [version, block, chosen],
-  )
+  const blockViews = block ? stationViews(version, block, chosen) : []
   const blockTally = tally?.blocks.find((each) => each.block === block?.id) ?? null
   const kind = position.phase === 'brief' ? 'brief' : (position.segment?.kind ?? 'rest')
   const stopped = position.halted === 'stopped'
@@ -93,10 +90,7 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
     repsDone: repsDone && enoughLeft,
   })
   const comingBlock = kind === 'rest' && nextWork?.otherBlock ? nextWork.block : null
-  const comingViews = useMemo(
-    () => (comingBlock ? stationViews(version, comingBlock, chosen) : []),
-    [version, comingBlock, chosen],
-  )
+  const comingViews = comingBlock ? stationViews(version, comingBlock, chosen) : []
   /** The station on show, which the keys 1, 2 and 3 speak of: the present one, or the one that comes. */
   const view: StationView | null =
     kind === 'rest'

@@ -7,7 +7,7 @@ import { REASON_TEXT } from './texts'
 import { useDistanceShare } from './use-distance-share'
 
 /** Keys of the three options: easier, as planned, harder. */
-export const OPTION_KEYS = ['1', '2', '3'] as const
+const OPTION_KEYS = ['1', '2', '3'] as const
 
 /** From this share of the screen's height on, distance text leaves no room for near text beside it. */
 const LARGE_SHARE = 0.066

@@ -20,13 +20,13 @@ import type { StationKey } from '@/hooks/player/types'
 export type Ground = 'hall' | 'birch'
 export const SHORT_REST_MS = 15_000
 
-export const stationKey = (block: string, station: number): StationKey => `${block}/${station}`
+const stationKey = (block: string, station: number): StationKey => `${block}/${station}`
 
 export function stationsOf(block: Block): readonly AnyStation[] {
   return block.format.type === 'rest' ? [] : block.format.stations
 }
 
-export function movementOf(version: PublishedVersion, slug: string): Movement | null {
+function movementOf(version: PublishedVersion, slug: string): Movement | null {
   return version.movements.find((movement) => movement.slug === slug) ?? null
 }
 

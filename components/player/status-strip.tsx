@@ -67,7 +67,7 @@ const SOUND_WORDS = {
   failed: 'no sound: watch the numbers',
 } as const
 
-export function SoundLine() {
+function SoundLine() {
   const sound = usePlayer((state) => state.sound)
   const unlock = usePlayer((state) => state.unlockSound)
   if (sound === 'blocked') {

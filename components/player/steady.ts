@@ -42,11 +42,3 @@ export function useSteadyPosition(): Position | null {
   const [select] = useState(() => steady((state) => state.position, samePlace))
   return usePlayer(select)
 }
-
-/** A value worked out from the running position, rendered only when it changes. */
-export function useFromPosition<T extends string | number | boolean | null>(
-  work: (position: Position) => T,
-  without: T,
-): T {
-  return usePlayer((state) => (state.position ? work(state.position) : without))
-}

@@ -36,7 +36,7 @@ const CONTROLS =
  * clicker's Page Down and the media key 'next' are the same press without that limit. Character keys
  * can be turned off whole (WCAG 2.1.4).
  */
-export function playerKey(
+function playerKey(
   event: Pick<KeyboardEvent, 'key' | 'repeat' | 'ctrlKey' | 'metaKey' | 'altKey' | 'target'>,
   lettersOn: boolean,
 ): PlayerKey | null {

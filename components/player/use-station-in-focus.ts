@@ -17,7 +17,7 @@ interface Said {
  * Index of the station that heads the screen. Timed pieces know theirs; in rounds it is the one that
  * the planned pace reaches since the round began, or since the member brought one forward.
  */
-export function stationInFocus(run: Run, position: Position, said: Said | null): number {
+function stationInFocus(run: Run, position: Position, said: Said | null): number {
   const own = position.segment?.station
   if (own !== undefined) return own
   const block = run.version.spec.blocks[position.blockIndex]
