@@ -1,10 +1,13 @@
 /**
  * Writes public/sw.js: a class that was loaded comes back at a reload without a network. Its caches are
- * named by the build, so a new one starts clean. `node scripts/service-worker.mjs BUILD`.
+ * named by the build, so a new one starts clean. `node scripts/service-worker.mjs [BUILD]`, after the
+ * build, whose own id is taken where none is given.
  */
-import { readdirSync, writeFileSync } from 'node:fs'
+import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs'
 
-const build = process.argv[2] ?? String(Date.now())
+const buildId = new URL('../.next/BUILD_ID', import.meta.url)
+const build =
+  process.argv[2] ?? (existsSync(buildId) ? readFileSync(buildId, 'utf8').trim() : 'unbuilt')
 const list = (folder) =>
   readdirSync(new URL(`../public/${folder}/`, import.meta.url))
     .filter((name) => /\.(wav|woff2)$/.test(name))
@@ -25,16 +28,18 @@ self.addEventListener('activate', (event) => {
       .then(() => self.clients.claim()),
   )
 })
-// At sign-out: pages of one person are never shown to the next.
 self.addEventListener('message', (event) => {
-  if (event.data !== 'forget-pages') return
-  event.waitUntil(
-    caches.open(CACHE).then(async (cache) => {
-      for (const request of await cache.keys()) if (new URL(request.url).pathname.startsWith('/play/')) await cache.delete(request)
-    }),
-  )
+  if (event.data?.type === 'keep-page') event.waitUntil(keepPage(event.data.page, event.data.assets))
 })
 
+async function keepPage(page, assets) {
+  if (!String(page).startsWith('/play/')) return
+  const cache = await caches.open(CACHE)
+  await keep(new Request(page), await fetch(page, { credentials: 'same-origin' }))
+  for (const asset of assets) {
+    if (String(asset).startsWith('/_next/static/') && !(await cache.match(asset))) await cache.add(asset)
+  }
+}
 async function keep(request, answer) {
   if (answer.ok && !answer.redirected) await (await caches.open(CACHE)).put(request, answer.clone())
   return answer

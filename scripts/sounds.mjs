@@ -1,8 +1,10 @@
 /**
- * Makes the sounds of the player (`npm run sounds`): every one is computed here, from sines that die
+ * Makes the sounds of the player (`npm run sounds`, or into a folder that is given): every one is computed here, from sines that die
  * away, and told apart by rhythm as well as by height. 44.1 kHz, 16 bit, mono.
  */
 import { mkdirSync, writeFileSync } from 'node:fs'
+import { join } from 'node:path'
+import { fileURLToPath } from 'node:url'
 
 const RATE = 44_100
 const PEAK = 0.89
@@ -129,9 +131,9 @@ function wav(samples) {
   return data
 }
 
-const folder = new URL('../public/sounds/', import.meta.url)
+const folder = process.argv[2] ?? fileURLToPath(new URL('../public/sounds/', import.meta.url))
 mkdirSync(folder, { recursive: true })
 for (const [name, samples] of Object.entries(SOUNDS)) {
-  writeFileSync(new URL(`${name}.wav`, folder), wav(finished(samples)))
+  writeFileSync(join(folder, `${name}.wav`), wav(finished(samples)))
 }
-console.log(`${Object.keys(SOUNDS).length} sounds are in public/sounds.`)
+console.log(`${Object.keys(SOUNDS).length} sounds are in ${folder}.`)

@@ -1,10 +1,11 @@
 'use client'
 import { startTransition, useState } from 'react'
 import { Button } from '@/components/ui/button'
+import { forgetSentClasses } from '@/hooks/player/memory'
 import { forgetKeptPages } from '@/hooks/player/service-worker'
 import { signOut, signOutEverywhere } from '@/server/actions/account'
 
-/** Ends this session, or all of the person's. Pages kept for a reload without a network are forgotten first. */
+/** Ends this session, or all of the person's. What the browser kept of them and the server has is forgotten first. */
 export function SignOutButton({ everywhere = false }: { everywhere?: boolean }) {
   const [isPending, setPending] = useState(false)
   return (
@@ -13,8 +14,10 @@ export function SignOutButton({ everywhere = false }: { everywhere?: boolean }) 
       disabled={isPending}
       onClick={() => {
         setPending(true)
-        forgetKeptPages()
-        startTransition(() => (everywhere ? signOutEverywhere() : signOut()))
+        startTransition(async () => {
+          await Promise.all([forgetKeptPages(), forgetSentClasses()])
+          await (everywhere ? signOutEverywhere() : signOut())
+        })
       }}
     >
       {everywhere ? 'Sign out everywhere' : 'Sign out'}

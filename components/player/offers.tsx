@@ -51,7 +51,7 @@ export function GapQuestion() {
   const goOn = usePlayer((state) => state.goOn)
   return (
     <Offer
-      title={gap?.reason === 'clock-changed' ? 'The clock was changed' : 'You were away'}
+      title={gap?.reason === 'clock-changed' ? 'The clock has jumped' : 'You were away'}
       ways={
         <>
           <ActionButton look="primary" autoFocus onClick={() => goOn('where-i-was')}>
@@ -65,7 +65,7 @@ export function GapQuestion() {
     >
       <p>
         {gap?.reason === 'clock-changed'
-          ? 'This computer’s clock was set during your class, so how long you were away is not certain. Your rounds are all there.'
+          ? 'This computer slept, or its clock was set during your class: how long you were away is not certain. Your rounds are all there.'
           : `The class has stood still for ${lengthText(gap?.awayMs ?? 0)}. Your rounds are all there.`}
       </p>
       <p>Where do you want to go on?</p>

@@ -17,8 +17,26 @@ const NAMES: readonly SoundName[] = [
   'call-10',
 ]
 const addressOf = (name: SoundName) => `/sounds/${name}.wav`
-/** What comes this much too late is not sounded: two knocks in one tell nobody anything. */
-const TOO_LATE_SECONDS = 0.25
+/** Loudspeakers without wires lag by up to this much; a timestamp further off is stale. */
+const MOST_LATENCY_SECONDS = 0.5
+/** What browsers take for a person's doing; a finger counts when it is lifted. */
+const GESTURES = ['pointerdown', 'pointerup', 'click', 'keydown'] as const
+
+/**
+ * The context's time at an instant of performance.now(). The output timestamp says what is heard when,
+ * so that a mark sounds with its picture; a stale one (the context slept) is not believed.
+ */
+export function contextTimeAt(
+  context: Pick<AudioContext, 'currentTime' | 'getOutputTimestamp'>,
+  atMs: number,
+  nowMs: number,
+): number {
+  const plain = context.currentTime + (atMs - nowMs) / 1_000
+  const { contextTime, performanceTime } = context.getOutputTimestamp?.() ?? {}
+  if (contextTime === undefined || !performanceTime) return plain
+  const heard = contextTime + (atMs - performanceTime) / 1_000
+  return Math.abs(heard - plain) < MOST_LATENCY_SECONDS ? heard : plain
+}
 
 /** The browser's sound. One a page: the audio context is the page's. */
 export function browserSound(): SoundPort {
@@ -28,6 +46,7 @@ export function browserSound(): SoundPort {
   const context: AudioContext | null = Howler.usingWebAudio ? (Howler.ctx ?? null) : null
   const buffers = new Map<SoundName, AudioBuffer>()
   const players = new Map<SoundName, Howl>()
+  const pending = new Set<AudioBufferSourceNode>()
   const watchers = new Set<(state: PlayerState['sound']) => void>()
   let isOn = true
   let volume = 1
@@ -46,39 +65,52 @@ export function browserSound(): SoundPort {
       players.set(name, new Howl({ src: [addressOf(name)], html5: true, preload: true }))
       return
     }
+    if (buffers.has(name)) return
     const answer = await fetch(addressOf(name))
     if (!answer.ok) throw new Error(`${name}: ${answer.status}`)
     buffers.set(name, await context.decodeAudioData(await answer.arrayBuffer()))
   }
-  Promise.all(NAMES.map(load)).catch(() => {
-    isBroken = true
-    tell()
-  })
+  function loadAll(): void {
+    Promise.all(NAMES.map(load)).then(
+      () => {
+        isBroken = false
+        tell()
+      },
+      () => {
+        isBroken = true
+        tell()
+      },
+    )
+  }
+  loadAll()
 
-  const resume = () => {
-    if (context && context.state !== 'running' && !isClosed) context.resume().then(tell, tell)
+  function silence(source: AudioBufferSourceNode): void {
+    if (!pending.delete(source)) return
+    source.disconnect()
+    source.stop()
+  }
+
+  async function resume(): Promise<void> {
+    if (isClosed) return
+    if (isBroken) loadAll()
+    if (context && context.state !== 'running') await context.resume().catch(() => undefined)
+    tell()
+  }
+  const onGesture = () => {
+    if (isBroken || context?.state !== 'running') void resume()
   }
   const onVisible = () => {
-    if (document.visibilityState === 'visible') resume()
+    if (document.visibilityState === 'visible') onGesture()
+  }
+  const onState = () => {
+    // What was scheduled on a context that stops would sound in a heap when it goes on.
+    if (context?.state !== 'running') for (const source of [...pending]) silence(source)
+    tell()
   }
   document.addEventListener('visibilitychange', onVisible)
-  document.addEventListener('pointerdown', resume)
-  document.addEventListener('keydown', resume)
-  context?.addEventListener('statechange', tell)
-
-  /** The context's time at an instant of performance.now(). */
-  function contextTime(at: AudioContext, atMs: number): number {
-    const stamp = at.getOutputTimestamp?.()
-    if (
-      stamp?.contextTime !== undefined &&
-      stamp.performanceTime !== undefined &&
-      stamp.performanceTime > 0 &&
-      Math.abs(at.currentTime - stamp.contextTime) < 0.5
-    ) {
-      return stamp.contextTime + (atMs - stamp.performanceTime) / 1_000
-    }
-    return at.currentTime + (atMs - performance.now()) / 1_000
-  }
+  window.addEventListener('online', onGesture)
+  for (const gesture of GESTURES) document.addEventListener(gesture, onGesture)
+  context?.addEventListener('statechange', onState)
 
   return {
     watch(watcher) {
@@ -95,35 +127,32 @@ export function browserSound(): SoundPort {
       tell()
     },
     schedule(name, atMs) {
-      const nothing = () => undefined
-      if (state() !== 'ready') return nothing
+      if (isClosed || state() !== 'ready') return null
       if (!context) {
-        const timer = setTimeout(
-          () => players.get(name)?.play(),
-          Math.max(0, atMs - performance.now()),
-        )
+        const player = players.get(name)
+        if (player?.state() !== 'loaded') return null
+        const timer = setTimeout(() => player.play(), Math.max(0, atMs - performance.now()))
         return () => clearTimeout(timer)
       }
       const buffer = buffers.get(name)
-      if (!buffer) return nothing
-      const at = contextTime(context, atMs)
-      if (context.currentTime - at > TOO_LATE_SECONDS) return nothing
+      if (!buffer) return null
       const source = context.createBufferSource()
       source.buffer = buffer
       source.connect(Howler.masterGain)
+      source.addEventListener('ended', () => pending.delete(source))
+      pending.add(source)
+      const at = contextTimeAt(context, atMs, performance.now())
       source.start(Math.max(context.currentTime, at))
-      return () => {
-        source.disconnect()
-        source.stop()
-      }
+      return () => silence(source)
     },
     close() {
       isClosed = true
       watchers.clear()
+      for (const source of [...pending]) silence(source)
       document.removeEventListener('visibilitychange', onVisible)
-      document.removeEventListener('pointerdown', resume)
-      document.removeEventListener('keydown', resume)
-      context?.removeEventListener('statechange', tell)
+      window.removeEventListener('online', onGesture)
+      for (const gesture of GESTURES) document.removeEventListener(gesture, onGesture)
+      context?.removeEventListener('statechange', onState)
       players.forEach((player) => player.unload())
     },
   }

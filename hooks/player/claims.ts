@@ -2,42 +2,49 @@
 import type { Claim, ClaimPort } from './ports'
 
 const nameOf = (attemptId: string) => `floorside-attempt-${attemptId}`
-/** How long another tab has to say that it plays the attempt. */
+/** How long another tab has to say that it plays the attempt, or to be gone. */
 const ANSWER_MS = 250
 
 type Word = { type: 'mine?' | 'mine' | 'take'; tab: string }
 
 /** By the browser's locks: the second one waits for nobody, a taken one is told. */
 export function lockClaims(locks: Pick<LockManager, 'request'>): ClaimPort {
+  const once: ClaimPort['claim'] = (attemptId, take, lost) =>
+    new Promise((resolve) => {
+      let isReleased = false
+      locks
+        .request(
+          nameOf(attemptId),
+          take ? { steal: true } : { ifAvailable: true },
+          (lock): Promise<void> | undefined => {
+            if (!lock) {
+              resolve(null)
+              return undefined
+            }
+            return new Promise<void>((release) =>
+              resolve({
+                release() {
+                  isReleased = true
+                  release()
+                },
+              }),
+            )
+          },
+        )
+        // A stolen lock rejects the request of its former holder.
+        .catch(() => {
+          if (!isReleased) lost()
+          resolve(null)
+        })
+    })
   return {
-    claim: (attemptId, take, lost) =>
-      new Promise((resolve) => {
-        let isReleased = false
-        locks
-          .request(
-            nameOf(attemptId),
-            take ? { steal: true } : { ifAvailable: true },
-            (lock): Promise<void> | undefined => {
-              if (!lock) {
-                resolve(null)
-                return undefined
-              }
-              return new Promise<void>((release) =>
-                resolve({
-                  release() {
-                    isReleased = true
-                    release()
-                  },
-                }),
-              )
-            },
-          )
-          // A stolen lock rejects the request of its former holder.
-          .catch(() => {
-            if (!isReleased) lost()
-            resolve(null)
-          })
-      }),
+    async claim(attemptId, take, lost) {
+      const first = await once(attemptId, take, lost)
+      if (first) return first
+      // A page that is just being left, as at a reload, gives its lock back a moment later.
+      await new Promise((resolve) => setTimeout(resolve, ANSWER_MS))
+      return once(attemptId, take, lost)
+    },
   }
 }
 

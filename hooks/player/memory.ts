@@ -40,19 +40,54 @@ function openOnce(): Promise<IDBPDatabase<Schema>> {
   })
 }
 
+/** Some browsers leave a request to open unanswered for ever. */
+const OPEN_WITHIN_MS = 3_000
+
+async function inTime<T>(work: Promise<T>): Promise<T> {
+  let timer: ReturnType<typeof setTimeout> | undefined
+  const late = new Promise<never>((_, reject) => {
+    timer = setTimeout(() => reject(new Error('The storage does not answer.')), OPEN_WITHIN_MS)
+  })
+  try {
+    return await Promise.race([work, late])
+  } finally {
+    clearTimeout(timer)
+  }
+}
+
 /** IndexedDB with its connection opened again where the browser cut it; rejects where nothing can be kept. */
-export function indexedMemory(): PlayerMemory {
+export function indexedMemory(
+  openDatabase: () => Promise<IDBPDatabase<Schema>> = openOnce,
+): PlayerMemory {
   let opening: Promise<IDBPDatabase<Schema>> | null = null
-  const open = () => (opening ??= openOnce())
+  /** Set while a request to open is late: nothing else waits for it as well. */
+  let isUnanswered = false
+
+  function open(): Promise<IDBPDatabase<Schema>> {
+    if (isUnanswered) return Promise.reject(new Error('The storage does not answer.'))
+    if (opening) return opening
+    const asked = openDatabase()
+    const answered = () => {
+      isUnanswered = false
+    }
+    opening = inTime(asked).catch((error: unknown) => {
+      opening = null
+      isUnanswered = true
+      asked.then(answered, answered)
+      throw error
+    })
+    return opening
+  }
 
   async function withDb<T>(work: (db: IDBPDatabase<Schema>) => Promise<T>): Promise<T> {
+    const db = await open()
     try {
-      return await work(await open())
+      return await work(db)
     } catch (error) {
       // Some browsers cut the connections of hidden tabs: once more on a fresh one.
-      const isCut = error instanceof DOMException && error.name === 'InvalidStateError'
       opening = null
-      if (!isCut) throw error
+      if (error instanceof DOMException && error.name === 'QuotaExceededError') throw error
+      db.close()
       return work(await open())
     }
   }
@@ -75,8 +110,10 @@ export function indexedMemory(): PlayerMemory {
     keepAttempt: (attempt) =>
       withDb(async (db) => {
         await db.put('attempts', attempt)
-        await forgetOld(db, attempt.startedWallMs)
+        // What is cleared away must not make what is kept look lost.
+        void forgetSent(db, attempt.startedWallMs - FORGET_AFTER_MS).catch(() => undefined)
       }),
+    attempt: (attemptId) => withDb(async (db) => (await db.get('attempts', attemptId)) ?? null),
     events: (attemptId) =>
       withDb(async (db) => {
         const kept = await db.getAllFromIndex('events', 'attempt', attemptId)
@@ -90,14 +127,14 @@ export function indexedMemory(): PlayerMemory {
     keepEvents: (events) =>
       withDb(async (db) => {
         const transaction = db.transaction('events', 'readwrite', { durability: 'strict' })
-        for (const kept of events) {
-          void transaction.store.put({
+        const puts = events.map((kept) =>
+          transaction.store.put({
             ...kept,
             id: kept.event.id,
             ...(kept.sent ? {} : { unsentOf: kept.membershipId }),
-          })
-        }
-        await transaction.done
+          }),
+        )
+        await Promise.all([...puts, transaction.done])
       }),
     alive: (attemptId) => withDb(async (db) => (await db.get('alive', attemptId)) ?? null),
     keepAlive: (alive) => withDb(async (db) => void (await db.put('alive', alive))),
@@ -118,29 +155,47 @@ export function indexedMemory(): PlayerMemory {
     markSent: (attemptId, ids) =>
       withDb(async (db) => {
         const transaction = db.transaction('events', 'readwrite')
-        for (const id of ids) {
+        const marks = ids.map(async (id) => {
           const kept = await transaction.store.get([attemptId, id])
-          if (!kept) continue
+          if (!kept) return
           const { unsentOf: _waiting, ...rest } = kept
-          void transaction.store.put({ ...rest, sent: true })
-        }
-        await transaction.done
+          await transaction.store.put({ ...rest, sent: true })
+        })
+        await Promise.all([...marks, transaction.done])
       }),
   }
 }
 
-async function forgetOld(db: IDBPDatabase<Schema>, nowMs: number): Promise<void> {
+/** Clears away what began before `beforeWallMs` and has been sent whole. */
+async function forgetSent(db: IDBPDatabase<Schema>, beforeWallMs: number): Promise<void> {
   for (const attempt of await db.getAll('attempts')) {
-    if (nowMs - attempt.startedWallMs < FORGET_AFTER_MS) continue
+    if (attempt.startedWallMs >= beforeWallMs) continue
     const events = await db.getAllFromIndex('events', 'attempt', attempt.attemptId)
     if (events.some((event) => !event.sent)) continue
     const transaction = db.transaction(['attempts', 'events', 'alive'], 'readwrite')
-    for (const event of events) {
-      void transaction.objectStore('events').delete([event.attemptId, event.id])
-    }
-    void transaction.objectStore('attempts').delete(attempt.attemptId)
-    void transaction.objectStore('alive').delete(attempt.attemptId)
-    await transaction.done
+    await Promise.all([
+      ...events.map((event) =>
+        transaction.objectStore('events').delete([event.attemptId, event.id]),
+      ),
+      transaction.objectStore('attempts').delete(attempt.attemptId),
+      transaction.objectStore('alive').delete(attempt.attemptId),
+      transaction.done,
+    ])
+  }
+}
+
+/**
+ * At sign-out: nothing that the server has stays in a browser that others may use. What was not sent
+ * stays for its own member alone, and is sent when they sign in again.
+ */
+export async function forgetSentClasses(): Promise<void> {
+  if (typeof indexedDB === 'undefined') return
+  try {
+    const db = await inTime(openOnce())
+    await forgetSent(db, Infinity)
+    db.close()
+  } catch {
+    // Nothing was kept where nothing can be opened.
   }
 }
 
@@ -158,6 +213,7 @@ export function volatileMemory(): PlayerMemory {
       [...attempts.values()].findLast(
         (one) => one.membershipId === membershipId && one.scheduledClassId === scheduledClassId,
       ) ?? null,
+    attempt: async (attemptId) => attempts.get(attemptId) ?? null,
     keepAttempt: async (attempt) => void attempts.set(attempt.attemptId, attempt),
     events: async (attemptId) => [...events.values()].filter((one) => one.attemptId === attemptId),
     keepEvents: async (kept) => kept.forEach((one) => events.set(one.event.id, one)),
@@ -181,30 +237,55 @@ export function volatileMemory(): PlayerMemory {
 }
 
 /**
- * `durable` while it keeps what it is given, memory from the first write that it refuses (storage full
- * or forbidden): nothing is lost while the page is open, and the store says that it is not kept.
+ * `durable` with memory behind it: from the first write that it refuses (storage full or forbidden)
+ * nothing is lost while the page is open, `isDurable` says so, and every later write tries to make up
+ * for what is owed.
  */
 export function safeMemory(durable: PlayerMemory, fallback = volatileMemory()): PlayerMemory {
-  let isDurable = true
-  const write = async (kept: () => Promise<void>, instead: () => Promise<void>): Promise<void> => {
-    // Also in memory, so that a later refusal finds all of it there.
-    await instead()
-    if (!isDurable) return
+  let isDurable = durable.isDurable
+  const sent = new Set<string>()
+  const owedAttempts = new Map<string, KeptAttempt>()
+  const owedEvents = new Map<string, KeptEvent>()
+
+  async function settle(): Promise<void> {
+    const attempts = [...owedAttempts.values()]
+    const events = [...owedEvents.values()]
     try {
-      await kept()
+      for (const attempt of attempts) {
+        await durable.keepAttempt(attempt)
+        if (owedAttempts.get(attempt.attemptId) === attempt) owedAttempts.delete(attempt.attemptId)
+      }
+      if (events.length > 0) {
+        await durable.keepEvents(
+          events.map((one) => (sent.has(one.event.id) ? { ...one, sent: true } : one)),
+        )
+      }
+      for (const one of events) owedEvents.delete(one.event.id)
+      isDurable = durable.isDurable
     } catch {
       isDurable = false
     }
   }
-  const read = async <T>(kept: () => Promise<T>, instead: () => Promise<T>): Promise<T> => {
-    if (!isDurable) return instead()
+  /** While storage refuses, nobody waits for it. */
+  const write = async (): Promise<void> => {
+    const settled = settle()
+    if (isDurable) await settled
+  }
+  const read = async <T>(
+    kept: () => Promise<T>,
+    instead: () => Promise<T>,
+    isThere: (value: T) => boolean,
+  ): Promise<T> => {
     try {
-      return await kept()
+      const value = await kept()
+      if (isThere(value)) return value
     } catch {
       isDurable = false
-      return instead()
     }
+    return instead()
   }
+  const isSome = (value: unknown) => value !== null
+
   return {
     get isDurable() {
       return isDurable
@@ -213,58 +294,91 @@ export function safeMemory(durable: PlayerMemory, fallback = volatileMemory()): 
       read(
         () => durable.preferences(id),
         () => fallback.preferences(id),
+        isSome,
       ),
-    keepPreferences: (id, chosen) =>
-      write(
-        () => durable.keepPreferences(id, chosen),
-        () => fallback.keepPreferences(id, chosen),
-      ),
-    latestAttempt: (id, classId) =>
+    async keepPreferences(id, chosen) {
+      await fallback.keepPreferences(id, chosen)
+      await durable.keepPreferences(id, chosen).catch(() => undefined)
+    },
+    latestAttempt: async (id, classId) =>
+      // One that storage refused is newer than any that it has.
+      [...owedAttempts.values()].findLast(
+        (one) => one.membershipId === id && one.scheduledClassId === classId,
+      ) ??
       read(
         () => durable.latestAttempt(id, classId),
         () => fallback.latestAttempt(id, classId),
+        isSome,
       ),
-    keepAttempt: (attempt) =>
-      write(
-        () => durable.keepAttempt(attempt),
-        () => fallback.keepAttempt(attempt),
-      ),
-    events: (id) =>
+    attempt: (id) =>
       read(
-        () => durable.events(id),
-        () => fallback.events(id),
+        () => durable.attempt(id),
+        () => fallback.attempt(id),
+        isSome,
       ),
-    keepEvents: (events) =>
-      write(
-        () => durable.keepEvents(events),
-        () => fallback.keepEvents(events),
-      ),
+    async keepAttempt(attempt) {
+      await fallback.keepAttempt(attempt)
+      owedAttempts.set(attempt.attemptId, attempt)
+      await write()
+    },
+    async events(id) {
+      const here = await fallback.events(id)
+      const kept = await durable.events(id).catch(() => {
+        isDurable = false
+        return []
+      })
+      const known = new Set(kept.map((one) => one.event.id))
+      return [...kept, ...here.filter((one) => !known.has(one.event.id))]
+    },
+    async keepEvents(events) {
+      await fallback.keepEvents(events)
+      for (const one of events) owedEvents.set(one.event.id, one)
+      await write()
+    },
     alive: (id) =>
       read(
         () => durable.alive(id),
         () => fallback.alive(id),
+        isSome,
       ),
-    keepAlive: (alive) =>
-      write(
-        () => durable.keepAlive(alive),
-        () => fallback.keepAlive(alive),
-      ),
-    unsent: (id) =>
-      read(
-        () => durable.unsent(id),
-        () => fallback.unsent(id),
-      ),
-    markSent: (id, ids) =>
-      write(
-        () => durable.markSent(id, ids),
-        () => fallback.markSent(id, ids),
-      ),
+    async keepAlive(alive) {
+      await fallback.keepAlive(alive)
+      await durable.keepAlive(alive).catch(() => undefined)
+    },
+    async unsent(id) {
+      const here = await fallback.unsent(id)
+      const kept = await durable.unsent(id).catch(() => {
+        isDurable = false
+        return []
+      })
+      const all = new Map(kept.map((one) => [one.attempt.attemptId, one]))
+      for (const one of here) {
+        const known = all.get(one.attempt.attemptId)
+        const ids = new Set(known?.events.map((event) => event.id))
+        const events = [
+          ...(known?.events ?? []),
+          ...one.events.filter((event) => !ids.has(event.id)),
+        ]
+        all.set(one.attempt.attemptId, { attempt: one.attempt, events })
+      }
+      return [...all.values()]
+        .map(({ attempt, events }) => ({
+          attempt,
+          events: events
+            .filter((event) => !sent.has(event.id))
+            .sort((one, other) => one.seq - other.seq),
+        }))
+        .filter((one) => one.events.length > 0)
+    },
+    async markSent(attemptId, ids) {
+      for (const id of ids) sent.add(id)
+      await fallback.markSent(attemptId, ids)
+      await durable.markSent(attemptId, ids).catch(() => undefined)
+    },
   }
 }
 
 /** The browser's memory for the player. */
 export function browserMemory(): PlayerMemory {
-  return typeof indexedDB === 'undefined'
-    ? safeMemory(volatileMemory())
-    : safeMemory(indexedMemory())
+  return safeMemory(typeof indexedDB === 'undefined' ? volatileMemory() : indexedMemory())
 }

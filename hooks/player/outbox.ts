@@ -9,7 +9,8 @@ import {
 } from '@/server/contract/attempts'
 import type { ErrorBody } from '@/server/contract/errors'
 import { paths } from '@/server/contract/paths'
-import type { KeptAttempt, PlayerMemory } from './ports'
+import type { ClassEvent } from '@/server/engine/tally/events'
+import type { KeptAttempt, PlayerMemory, PlayerPorts } from './ports'
 import type { PlayerState } from './types'
 
 type Saving = PlayerState['saving']
@@ -25,7 +26,8 @@ export interface OutboxPorts {
 export interface Outbox {
   /** Sends now what waits. */
   kick(): void
-  watch(tell: (saving: Saving) => void): () => void
+  watch: PlayerPorts['watchOutbox']
+  watchSeq: PlayerPorts['watchSeq']
   close(): void
 }
 
@@ -35,19 +37,29 @@ const LONGEST_RETRY_MS = 30_000
 const KEEPALIVE_BYTES = 60_000
 const REQUEST_MS = 15_000
 
+/** It may be taken later. `message` is for the member where they can do something about it. */
+class NotNow extends Error {}
 /** The server will not take these however often they are sent. */
-class Refused extends Error {}
+class Refused extends Error {
+  /** Perhaps only some of a batch are at fault. */
+  readonly isAboutContent: boolean
+  constructor(message: string, isAboutContent: boolean) {
+    super(message)
+    this.isAboutContent = isAboutContent
+  }
+}
 
 export function createOutbox(ports: OutboxPorts): Outbox {
   const { memory, membershipId } = ports
   const watchers = new Set<(saving: Saving) => void>()
+  const seqWatchers = new Set<(attemptId: string, highestSeq: number) => void>()
   let saving: Saving = { state: 'saved', unsent: 0, message: null }
   let isSending = false
   let isAskedAgain = false
   let retryMs = FIRST_RETRY_MS
   let timer: unknown = null
   let isClosed = false
-  /** Attempts that the server refused, with its words: kept, shown, tried again at the next opening. */
+  /** Events that the server refused, with its words: kept, shown, tried again at the next opening. */
   const refused = new Map<string, string>()
 
   const tell = (next: Saving) => {
@@ -55,10 +67,8 @@ export function createOutbox(ports: OutboxPorts): Outbox {
     watchers.forEach((watcher) => watcher(next))
   }
 
-  async function sendBatch(
-    attempt: KeptAttempt,
-    events: RecordEventsInput['events'],
-  ): Promise<string[]> {
+  /** The ids that the server has. Throws NotNow or Refused, or what the network throws. */
+  async function post(attempt: KeptAttempt, events: ClassEvent[]): Promise<string[]> {
     const input: RecordEventsInput = {
       scheduledClassId: attempt.scheduledClassId,
       versionId: attempt.versionId,
@@ -70,47 +80,71 @@ export function createOutbox(ports: OutboxPorts): Outbox {
       method: 'POST',
       headers: { 'content-type': 'application/json' },
       body,
-      keepalive: body.length < KEEPALIVE_BYTES,
+      keepalive: new TextEncoder().encode(body).length < KEEPALIVE_BYTES,
       signal: AbortSignal.timeout(REQUEST_MS),
     })
-    if (answer.ok) return ((await answer.json()) as RecordEventsResult).stored
-    const said = ((await answer.json().catch(() => null)) as ErrorBody | null)?.error.message
-    const comesBack = [401, 408, 425, 429].includes(answer.status) || answer.status >= 500
-    if (comesBack) {
-      throw new Error(answer.status === 401 ? 'sign in again to send; nothing is lost' : '')
+    if (answer.ok) {
+      const { stored, highestSeq } = (await answer.json()) as RecordEventsResult
+      seqWatchers.forEach((watcher) => watcher(attempt.attemptId, highestSeq))
+      return stored
     }
-    throw new Refused(said ?? `The server did not take it (${answer.status}).`)
+    if (answer.status === 401) throw new NotNow('Sign in again to send; nothing is lost.')
+    if ([408, 425, 429].includes(answer.status) || answer.status >= 500) throw new NotNow('')
+    const said = ((await answer.json().catch(() => null)) as ErrorBody | null)?.error.message
+    throw new Refused(
+      `${said ?? `The server did not take it (${answer.status}).`} It stays on this computer.`,
+      [400, 413, 422].includes(answer.status),
+    )
+  }
+
+  /** One event that the server cannot read must not hold the others back: a refused batch is halved. */
+  async function sendBatch(attempt: KeptAttempt, events: ClassEvent[]): Promise<void> {
+    try {
+      await memory.markSent(attempt.attemptId, await post(attempt, events))
+    } catch (error) {
+      if (!(error instanceof Refused)) throw error
+      if (!error.isAboutContent || events.length === 1) {
+        for (const event of events) refused.set(event.id, error.message)
+        return
+      }
+      const middle = events.length >> 1
+      await sendBatch(attempt, events.slice(0, middle))
+      await sendBatch(attempt, events.slice(middle))
+    }
+  }
+
+  async function waiting() {
+    const kept = await memory.unsent(membershipId)
+    return { kept, unsent: kept.reduce((sum, one) => sum + one.events.length, 0) }
   }
 
   async function sendAll(): Promise<void> {
-    const waiting = await memory.unsent(membershipId)
-    let unsent = waiting.reduce((sum, one) => sum + one.events.length, 0)
-    if (unsent === 0) {
-      tell({ state: 'saved', unsent: 0, message: null })
-      return
-    }
-    tell({ state: 'sending', unsent, message: null })
-    for (const { attempt, events } of waiting) {
-      if (refused.has(attempt.attemptId)) continue
-      for (let from = 0; from < events.length; from += EVENTS_PER_REQUEST) {
-        const part = events.slice(from, from + EVENTS_PER_REQUEST)
-        try {
-          const stored = await sendBatch(attempt, part)
-          await memory.markSent(attempt.attemptId, stored)
-          unsent -= stored.length
-        } catch (error) {
-          if (!(error instanceof Refused)) throw error
-          refused.set(attempt.attemptId, error.message)
-          break
+    const { kept, unsent } = await waiting()
+    if (unsent > 0) {
+      tell({ state: 'sending', unsent, message: null })
+      for (const { attempt, events } of kept) {
+        const wanted = events.filter((event) => !refused.has(event.id))
+        for (let from = 0; from < wanted.length; from += EVENTS_PER_REQUEST) {
+          await sendBatch(attempt, wanted.slice(from, from + EVENTS_PER_REQUEST))
         }
       }
     }
+    const left = unsent > 0 ? (await waiting()).unsent : 0
     const [message = null] = refused.values()
     tell(
-      unsent > 0
-        ? { state: 'saved-here', unsent, message }
+      left > 0
+        ? { state: 'saved-here', unsent: left, message }
         : { state: 'saved', unsent: 0, message: null },
     )
+  }
+
+  async function later(error: unknown): Promise<void> {
+    const { unsent } = await waiting().catch(() => ({ unsent: saving.unsent }))
+    const message = error instanceof NotNow && error.message !== '' ? error.message : null
+    tell({ state: 'saved-here', unsent, message })
+    if (isClosed) return
+    timer = ports.setTimer(kick, retryMs)
+    retryMs = Math.min(LONGEST_RETRY_MS, retryMs * 2)
   }
 
   function kick(): void {
@@ -123,23 +157,9 @@ export function createOutbox(ports: OutboxPorts): Outbox {
     ports.clearTimer(timer)
     timer = null
     sendAll()
-      .then(
-        () => {
-          retryMs = FIRST_RETRY_MS
-        },
-        async (error: unknown) => {
-          const waiting = await memory.unsent(membershipId).catch(() => [])
-          const message =
-            error instanceof Error && error.message.startsWith('sign in') ? error.message : null
-          tell({
-            state: 'saved-here',
-            unsent: waiting.reduce((sum, one) => sum + one.events.length, 0),
-            message,
-          })
-          timer = ports.setTimer(kick, retryMs)
-          retryMs = Math.min(LONGEST_RETRY_MS, retryMs * 2)
-        },
-      )
+      .then(() => {
+        retryMs = FIRST_RETRY_MS
+      }, later)
       .finally(() => {
         isSending = false
         if (isAskedAgain && !isClosed) {
@@ -156,10 +176,15 @@ export function createOutbox(ports: OutboxPorts): Outbox {
       watcher(saving)
       return () => watchers.delete(watcher)
     },
+    watchSeq(watcher) {
+      seqWatchers.add(watcher)
+      return () => seqWatchers.delete(watcher)
+    },
     close() {
       isClosed = true
       ports.clearTimer(timer)
       watchers.clear()
+      seqWatchers.clear()
     },
   }
 }

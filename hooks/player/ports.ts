@@ -9,12 +9,12 @@ export type SoundName =
 export interface SoundPort {
   /** Tells the state now and at every change. Returns the way to end it. */
   watch(tell: (state: PlayerState['sound']) => void): () => void
-  /** To be called from a key or a tap: browsers let sound begin only there. */
-  unlock(): void
+  /** To be called from a key or a tap: browsers let sound begin only there. Settles once that is tried. */
+  unlock(): Promise<void>
   /** 0 to 1; 0 and `on: false` are silence. */
   configure(volume: number, on: boolean): void
-  /** Sounds at an instant of the monotonic clock, if sound runs. Returns the way to call it off. */
-  schedule(name: SoundName, atMs: number): () => void
+  /** Sounds at an instant of the monotonic clock. Returns the way to call it off; null where sound does not run. */
+  schedule(name: SoundName, atMs: number): (() => void) | null
   close(): void
 }
 
@@ -28,8 +28,8 @@ export interface KeptAttempt {
   settings: RunSettings
   options: Record<string, string>
   startedWallMs: number
-  /** Finished, or left for good: not offered again. */
-  over: boolean
+  /** `ended`: only its rating may be missing. `discarded`: the member chose to start anew. Neither is offered again. */
+  over: 'ended' | 'discarded' | null
 }
 
 export interface KeptEvent {
@@ -52,6 +52,7 @@ export interface PlayerMemory {
   preferences(membershipId: string): Promise<Partial<PlayerPreferences> | null>
   keepPreferences(membershipId: string, preferences: PlayerPreferences): Promise<void>
   latestAttempt(membershipId: string, scheduledClassId: string): Promise<KeptAttempt | null>
+  attempt(attemptId: string): Promise<KeptAttempt | null>
   keepAttempt(attempt: KeptAttempt): Promise<void>
   events(attemptId: string): Promise<KeptEvent[]>
   keepEvents(events: readonly KeptEvent[]): Promise<void>
@@ -91,5 +92,7 @@ export interface PlayerPorts {
   /** Something new waits to be sent. */
   kickOutbox(): void
   watchOutbox(tell: (saving: PlayerState['saving']) => void): () => void
+  /** The highest `seq` that the server has of an attempt, at every answer: other devices' events count too. */
+  watchSeq(tell: (attemptId: string, highestSeq: number) => void): () => void
   stayAwake(on: boolean): void
 }

@@ -1,12 +1,55 @@
 /** The service worker, where the browser has one: only on HTTPS and on the computer itself. */
 
+const isThere = () => process.env.NODE_ENV === 'production' && 'serviceWorker' in navigator
+
 /** Registers it; nothing else waits for it, and the product works without. */
 export function registerServiceWorker(): void {
-  if (process.env.NODE_ENV !== 'production' || !('serviceWorker' in navigator)) return
-  navigator.serviceWorker.register('/sw.js').catch(() => undefined)
+  if (isThere()) navigator.serviceWorker.register('/sw.js').catch(() => undefined)
 }
 
-/** At sign-out: pages that were kept for a reload without a network are forgotten. */
-export function forgetKeptPages(): void {
-  if ('serviceWorker' in navigator) navigator.serviceWorker.controller?.postMessage('forget-pages')
+/**
+ * Keeps this page for a reload without a network. The way here is mostly a change of route, which asks
+ * for no document, and the first visit loads its scripts before there is a worker.
+ */
+export async function keepThisPage(): Promise<void> {
+  if (!isThere()) return
+  registerServiceWorker()
+  const { active } = await navigator.serviceWorker.ready
+  const assets = performance
+    .getEntriesByType('resource')
+    .map((entry) => new URL(entry.name))
+    .filter(
+      (address) =>
+        address.origin === location.origin && address.pathname.startsWith('/_next/static/'),
+    )
+    .map((address) => address.pathname + address.search)
+  active?.postMessage({ type: 'keep-page', page: location.pathname, assets })
+}
+
+/** At sign-out, and where another person signs in: pages kept for one are never shown to the next. */
+export async function forgetKeptPages(): Promise<void> {
+  if (typeof caches === 'undefined') return
+  try {
+    for (const name of await caches.keys()) {
+      const cache = await caches.open(name)
+      for (const request of await cache.keys()) {
+        if (new URL(request.url).pathname.startsWith('/play/')) await cache.delete(request)
+      }
+    }
+  } catch {
+    // Without storage nothing was kept.
+  }
+}
+
+const OWNER_KEY = 'floorside-pages-of'
+
+/** Forgets the pages of whoever was here before `membershipId`, though they never signed out. */
+export async function keepPagesOnlyFor(membershipId: string): Promise<void> {
+  try {
+    if (localStorage.getItem(OWNER_KEY) === membershipId) return
+    await forgetKeptPages()
+    localStorage.setItem(OWNER_KEY, membershipId)
+  } catch {
+    await forgetKeptPages()
+  }
 }

@@ -15,14 +15,17 @@ export function startTicker(wake: () => void): () => void {
     const source = `setInterval(() => postMessage(0), ${EVERY_MS})`
     const address = URL.createObjectURL(new Blob([source], { type: 'text/javascript' }))
     const worker = new Worker(address)
-    URL.revokeObjectURL(address)
     let end = () => worker.terminate()
     worker.onmessage = wake
+    // Refused by the page's own policy, for one.
     worker.onerror = () => {
       worker.terminate()
       end = onPage()
     }
-    return () => end()
+    return () => {
+      end()
+      URL.revokeObjectURL(address)
+    }
   } catch {
     return onPage()
   }

@@ -6,9 +6,11 @@ import { browserSound } from './audio'
 import { browserClaims } from './claims'
 import { usualScreen } from './distance'
 import { deviceId, newId } from './ids'
+import { onMediaNext } from './media-session'
 import { browserMemory } from './memory'
 import { browserOutbox } from './outbox'
-import { createPlayer } from './player-store'
+import { keepPagesOnlyFor, keepThisPage } from './service-worker'
+import { createPlayer } from './store'
 import { startTicker } from './ticker'
 import type { PlayerStore } from './types'
 import { browserWakeLock } from './wake-lock'
@@ -34,11 +36,18 @@ export function useBrowserPlayer(data: PlayerData): StoreApi<PlayerStore> | null
       device: deviceId(safeLocalStorage()),
       kickOutbox: outbox.kick,
       watchOutbox: outbox.watch,
+      watchSeq: outbox.watchSeq,
       stayAwake: browserWakeLock(),
     })
     setStore(player.store)
     void player.open()
+    void keepPagesOnlyFor(data.membershipId).then(keepThisPage)
+    const endMediaNext = onMediaNext(() => {
+      const { stage, send } = player.store.getState()
+      if (stage === 'class') send({ type: 'log-round', by: 'member' })
+    })
     return () => {
+      endMediaNext()
       player.close()
       outbox.close()
       setStore(null)

@@ -1,11 +1,14 @@
 /** Keeps the screen awake in class. Lost at every hide, so it is asked for again; absent on plain http. */
 export function browserWakeLock(): (on: boolean) => void {
   let isWanted = false
+  let isAsking = false
   let lock: WakeLockSentinel | null = null
   const ask = () => {
-    if (!isWanted || lock || document.visibilityState !== 'visible') return
+    if (!isWanted || lock || isAsking || document.visibilityState !== 'visible') return
+    if (!navigator.wakeLock) return
+    isAsking = true
     navigator.wakeLock
-      ?.request('screen')
+      .request('screen')
       .then((got) => {
         lock = got
         got.addEventListener('release', () => {
@@ -13,7 +16,11 @@ export function browserWakeLock(): (on: boolean) => void {
         })
         if (!isWanted) void got.release()
       })
+      // Refused on a low battery, for one: the next key asks again.
       .catch(() => undefined)
+      .finally(() => {
+        isAsking = false
+      })
   }
   return (on) => {
     if (on === isWanted) return
