@@ -1,7 +1,7 @@
 import { Rungs } from '@/components/lane/rungs'
 import { rungWindow } from '@/components/lane/rung-window'
 import { blockPlan, roundReps } from '@/server/engine/pace/block-plan'
-import { AS_PLANNED } from '@/server/engine/spec/movement'
+import { AS_PLANNED } from '@/server/engine/spec/names'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import { clockText, scoreText } from '@/server/engine/tally/score'
 import type { AttemptTally, BlockTally } from '@/server/engine/tally/types'

@@ -1,6 +1,6 @@
 /** Which options a member used, beside those that the coach planned. */
 import type { Level } from '@/server/engine/spec/movement'
-import { AS_PLANNED } from '@/server/engine/spec/movement'
+import { AS_PLANNED } from '@/server/engine/spec/names'
 import type { BlockTally } from '@/server/engine/tally/types'
 import type { BoardDto, BoardRow } from '@/server/contract/board'
 

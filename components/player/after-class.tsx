@@ -13,7 +13,8 @@ import {
   type BlockForecast,
 } from '@/server/engine/pace/forecast'
 import type { Block } from '@/server/engine/spec/schema'
-import { HURT_PLACES, type HurtPlace } from '@/server/engine/tally/events'
+import type { HurtPlace } from '@/server/engine/tally/events'
+import { HURT_PLACES } from '@/server/engine/tally/names'
 import { scoreText } from '@/server/engine/tally/score'
 import type { BlockTally } from '@/server/engine/tally/types'
 import { ActionButton } from './button'

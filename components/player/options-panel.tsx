@@ -2,7 +2,7 @@
 import clsx from 'clsx'
 import { useState } from 'react'
 import type { MovementOption, Reason } from '@/server/engine/spec/movement'
-import { REASONS } from '@/server/engine/spec/movement'
+import { REASONS } from '@/server/engine/spec/names'
 import { ActionButton } from './button'
 import { heldReason } from './held'
 import { Panel } from './panel'

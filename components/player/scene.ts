@@ -2,12 +2,8 @@
  * What the player draws at a position, as plain values: which ground, which block and station, how
  * many reps, which three options. Pure; the components only set type.
  */
-import {
-  AS_PLANNED,
-  type Level,
-  type Movement,
-  type MovementOption,
-} from '@/server/engine/spec/movement'
+import type { Level, Movement, MovementOption } from '@/server/engine/spec/movement'
+import { AS_PLANNED } from '@/server/engine/spec/names'
 import { optionsOf } from '@/server/engine/spec/options'
 import { repsInRound } from '@/server/engine/spec/reps'
 import type { AnyStation, Block, Reps, Sides } from '@/server/engine/spec/schema'

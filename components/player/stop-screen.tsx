@@ -7,7 +7,8 @@ import {
   STOP_ADVICE,
   STOP_SIGN_TEXT,
 } from '@/server/engine/fit/stop-signs'
-import { RED_FLAG_SIGNS, type StopSign } from '@/server/engine/tally/events'
+import type { StopSign } from '@/server/engine/tally/events'
+import { RED_FLAG_SIGNS } from '@/server/engine/tally/names'
 import { ActionButton } from './button'
 import { usePlayer } from './player-context'
 

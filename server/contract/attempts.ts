@@ -1,5 +1,6 @@
 /** What crosses the wire when a class is recorded and read again. */
 import { z } from 'zod'
+import { EVENTS_PER_REQUEST } from './batch'
 import { eventSchema, type ClassEvent } from '../engine/tally/events'
 import type { PublishedVersion } from '../engine/spec/version'
 import type { AttemptTally } from '../engine/tally/types'
@@ -9,8 +10,6 @@ import type { HurtHold, ScheduledClassSummary } from './classes'
 export const uuidV7Schema = z
   .string()
   .regex(/^[0-9a-f]{8}-[0-9a-f]{4}-7[0-9a-f]{3}-[89ab][0-9a-f]{3}-[0-9a-f]{12}$/i, 'Not a UUIDv7')
-
-export const EVENTS_PER_REQUEST = 500
 
 /** POST to paths.api.attemptEvents. Repeating it changes nothing. */
 export const recordEventsInput = z.strictObject({

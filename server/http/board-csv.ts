@@ -11,7 +11,7 @@ import {
 } from '@/server/contract/board-view'
 import { HURT_PLACE_TEXT } from '@/server/engine/fit/hurt'
 import { STOP_SIGN_TEXT } from '@/server/engine/fit/stop-signs'
-import { AS_PLANNED } from '@/server/engine/spec/movement'
+import { AS_PLANNED } from '@/server/engine/spec/names'
 import { scoreText } from '@/server/engine/tally/score'
 
 /** Rows and order as the view has them. `nowMs`: milliseconds since 1970. Cells that a spreadsheet would run are quoted with an apostrophe. */

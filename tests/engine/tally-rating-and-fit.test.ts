@@ -16,7 +16,7 @@ import {
   isRedFlag,
 } from '@/server/engine/fit/stop-signs'
 import { CR10_ANCHORS, sessionLoad } from '@/server/engine/load/session-rpe'
-import { STOP_SIGNS } from '@/server/engine/tally/events'
+import { STOP_SIGNS } from '@/server/engine/tally/names'
 import { block, press, squat, versionOf } from './classes'
 
 describe('session RPE', () => {

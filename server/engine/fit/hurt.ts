@@ -1,5 +1,6 @@
 /** 'This hurts': which option spares the place, in class and until member and coach have cleared it. */
-import { AS_PLANNED, type Movement, type MovementOption, type Reason } from '../spec/movement'
+import type { Movement, MovementOption, Reason } from '../spec/movement'
+import { AS_PLANNED } from '../spec/names'
 import { optionsOf } from '../spec/options'
 import type { AnyStation } from '../spec/schema'
 import type { PublishedVersion } from '../spec/version'

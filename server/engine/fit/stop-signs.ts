@@ -1,5 +1,6 @@
 /** Signs that mean stop exercising, in our own words, and what to do then. Never a diagnosis. */
-import { RED_FLAG_SIGNS, type RedFlagSign, type StopSign } from '../tally/events'
+import type { RedFlagSign, StopSign } from '../tally/events'
+import { RED_FLAG_SIGNS } from '../tally/names'
 
 /** As the member reads them under 'What is it?'. */
 export const STOP_SIGN_TEXT: Readonly<Record<StopSign, string>> = {

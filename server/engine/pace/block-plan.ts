@@ -1,5 +1,6 @@
 /** What one round of a block asks for: reps, their time and the changes, by station. */
-import { AS_PLANNED, type Movement, type MovementOption } from '../spec/movement'
+import type { Movement, MovementOption } from '../spec/movement'
+import { AS_PLANNED } from '../spec/names'
 import { optionsOf } from '../spec/options'
 import { repsInRound, rungCount } from '../spec/reps'
 import type { Block, Reps, Sides, Station, Tempo } from '../spec/schema'

@@ -1,7 +1,8 @@
 /** What a member does in class: the only thing that a player stores. */
 import { z } from 'zod'
+import { HURT_PLACES, RED_FLAG_SIGNS, STOP_SIGNS, COUNTINGS, COUNTED_BY } from './names'
 import { idSchema, slugSchema } from '../spec/schema'
-import { REASONS } from '../spec/movement'
+import { REASONS } from '../spec/names'
 
 const ms = z
   .number()
@@ -11,31 +12,6 @@ const ms = z
 const round = z.number().int().min(1).max(1_000_000)
 const station = z.number().int().min(0).max(1_000_000)
 const note = z.string().max(1_000).optional()
-
-/** Where something hurts: a joint or region, or somewhere else. */
-export const HURT_PLACES = [
-  'knee',
-  'hip',
-  'ankle-or-foot',
-  'lower-back',
-  'neck',
-  'shoulder',
-  'elbow',
-  'wrist',
-  'elsewhere',
-] as const
-/** Signs that mean stop exercising; any of them ends the class for today. */
-export const RED_FLAG_SIGNS = [
-  'chest-pain',
-  'breathless',
-  'dizzy-or-faint',
-  'irregular-heartbeat',
-  'calf-or-leg-cramp',
-  'severe-tiredness',
-] as const
-export const STOP_SIGNS = [...RED_FLAG_SIGNS, 'pain', 'want-to-stop', 'other'] as const
-export const COUNTINGS = ['press', 'lead', 'afterwards'] as const
-export const COUNTED_BY = ['member', 'lead', 'afterwards'] as const
 
 const common = {
   /** UUIDv7 made by the client; two events with the same id are one. */

@@ -1,7 +1,7 @@
 /** Events into a tally: pure, the same for any order of arrival and any number of duplicates. */
 import { isRedFlag } from '../fit/stop-signs'
 import { blockPlan, roundLimit, roundReps, type BlockPlan } from '../pace/block-plan'
-import { AS_PLANNED } from '../spec/movement'
+import { AS_PLANNED } from '../spec/names'
 import { optionsOf } from '../spec/options'
 import type { Block } from '../spec/schema'
 import type { PublishedVersion } from '../spec/version'

@@ -1,9 +1,9 @@
 /** What each command does at a position, or why it does nothing. */
 import { roundReps, type BlockPlan } from '../pace/block-plan'
-import { AS_PLANNED } from '../spec/movement'
+import { AS_PLANNED } from '../spec/names'
 import { optionsOf } from '../spec/options'
 import type { Block } from '../spec/schema'
-import { HURT_PLACES, STOP_SIGNS } from '../tally/events'
+import { HURT_PLACES, STOP_SIGNS } from '../tally/names'
 import { withEdit } from './edits'
 import { at, editedTimeline, reduce } from './facts'
 import { advance, lowestUndone, planOf, stationsOf, wholeMs } from './place'

@@ -2,7 +2,7 @@
  * The run of a class by one member: commands in, events and the next run out. Nothing here has a
  * clock: `now` is an argument, in milliseconds on a clock that never goes back.
  */
-import { AS_PLANNED } from '../spec/movement'
+import { AS_PLANNED } from '../spec/names'
 import type { PublishedVersion } from '../spec/version'
 import type { ClassEvent } from '../tally/events'
 import { inOrder } from '../tally/order'
