@@ -2,11 +2,8 @@
  * Sends what was kept: in batches, again and again until the server says that it has them. Every event
  * has its own id, so sending twice stores once.
  */
-import {
-  EVENTS_PER_REQUEST,
-  type RecordEventsInput,
-  type RecordEventsResult,
-} from '@/server/contract/attempts'
+import type { RecordEventsInput, RecordEventsResult } from '@/server/contract/attempts'
+import { EVENTS_PER_REQUEST } from '@/server/contract/batch'
 import type { ErrorBody } from '@/server/contract/errors'
 import { paths } from '@/server/contract/paths'
 import type { ClassEvent } from '@/server/engine/tally/events'
