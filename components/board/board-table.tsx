@@ -8,6 +8,7 @@ import {
   BOARD_STATE_TEXT,
   type BoardView,
 } from '@/server/contract/board-view'
+import { workNumber } from '@/server/contract/block-text'
 import { paths } from '@/server/contract/paths'
 import type { Block } from '@/server/engine/spec/schema'
 import { BlockCell } from './block-cell'
@@ -43,7 +44,6 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
   const { blocks } = dto.version.spec
   const groups = groupRows(rows, view, nowMs)
   const widths = blocks.map((block) => columnPx(block, shapes.get(block.id)))
-  let number = 0
   return (
     <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="Members by blocks">
       <table
@@ -71,8 +71,6 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
               {rows.length === 1 ? '1 member' : `${rows.length} members`}
             </SortHead>
             {blocks.map((block) => {
-              const filled = block.kind === 'work'
-              if (filled) number += 1
               return (
                 <SortHead
                   key={block.id}
@@ -84,7 +82,7 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
                     block.format.type === 'rest' && 'text-center',
                   )}
                 >
-                  <BayHead block={block} number={filled ? number : null} />
+                  <BayHead block={block} number={workNumber(blocks, block)} />
                 </SortHead>
               )
             })}

@@ -1,20 +1,18 @@
-import { formatText, stationNames, stationText } from '@/server/contract/block-text'
+import { workNumber, formatText, stationNames, stationText } from '@/server/contract/block-text'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 
 /** Every block of a class with its stations, and the easier and harder ways of each. */
 export function BlockList({ version }: { version: PublishedVersion }) {
-  let number = 0
   return (
     <ol className="grid gap-x-10 gap-y-7 md:grid-cols-2">
       {version.spec.blocks
         .filter((block) => block.format.type !== 'rest')
         .map((block) => {
-          const isWork = block.kind === 'work'
-          if (isWork) number += 1
+          const number = workNumber(version.spec.blocks, block)
           return (
             <li key={block.id} className="border-t-4 border-line pt-2">
               <h3 className="flex items-baseline gap-3 text-xl">
-                {isWork ? <span className="figures text-3xl">{number}</span> : null}
+                {number !== null ? <span className="figures text-3xl">{number}</span> : null}
                 {block.title}
               </h3>
               <p className="text-text-quiet">{formatText(block)}</p>

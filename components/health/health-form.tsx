@@ -115,7 +115,10 @@ interface QuestionProps {
 function Question({ question, answer, error, onAnswer }: QuestionProps) {
   const { question: text, change } = HEALTH_QUESTION_TEXT[question]
   return (
-    <fieldset className="grid gap-x-8 gap-y-3 border-b-4 border-fill py-4 sm:grid-cols-[1fr_auto] sm:items-center">
+    <fieldset
+      aria-invalid={error ? true : undefined}
+      className="grid gap-x-8 gap-y-3 border-b-4 border-fill py-4 sm:grid-cols-[1fr_auto] sm:items-center"
+    >
       <legend className="sr-only">{text}</legend>
       <div>
         <p aria-hidden className="text-lg font-semibold">
@@ -136,7 +139,6 @@ function Question({ question, answer, error, onAnswer }: QuestionProps) {
               value={value}
               checked={answer === value}
               onChange={() => onAnswer(value)}
-              aria-invalid={error ? true : undefined}
               className="sr-only"
             />
             {value === 'yes' ? 'Yes' : 'No'}

@@ -24,6 +24,12 @@ export function repsText(reps: Reps): string {
   return shown.join(', ') + (isWhole && reps.then === 'done' ? '' : ' …')
 }
 
+/** The number that a work block has on the lane, from 1; null for every other kind. */
+export function workNumber(blocks: readonly Block[], block: Block): number | null {
+  if (block.kind !== 'work') return null
+  return blocks.filter((one) => one.kind === 'work').indexOf(block) + 1
+}
+
 /** '6:00, as many rounds as possible'. */
 export function formatText(block: Block): string {
   const { format } = block

@@ -2,7 +2,7 @@
 import type { PublishedVersion } from '../engine/spec/version'
 import type { AttemptState, AttemptTally } from '../engine/tally/types'
 import type { HealthAnswers } from '../engine/fit/screening'
-import type { HurtPlace } from '../engine/tally/events'
+import type { ClassEvent, HurtPlace } from '../engine/tally/events'
 
 export interface ScheduledClassSummary {
   scheduledClassId: string
@@ -55,7 +55,7 @@ export interface PlayerData {
   holds: HurtHold[]
   emergencyNumber: string | null
   /** Latest attempt not yet finished or stopped, with its events, to go on from another device. */
-  openAttempt: { attemptId: string; events: import('../engine/tally/events').ClassEvent[] } | null
+  openAttempt: { attemptId: string; events: ClassEvent[] } | null
   /** Last finished attempt of the same class or version, for 'last time'. */
   lastTally: AttemptTally | null
 }

@@ -23,7 +23,7 @@ let test: TestDatabase
 let token: string | null = null
 
 vi.mock('@/db/client', async (original) => ({
-  ...(await original<typeof import('@/db/client')>()),
+  ...(await original<object>()),
   database: () => test.db,
   databaseSql: () => test.sql,
 }))
@@ -266,17 +266,17 @@ function formFor(action: string): FormData {
 describe('actions', () => {
   it.each(everybody(ACTIONS))('%s by %s: %s', async (what, visitor, expected) => {
     token = tokens.get(visitor) ?? null
-    const module = (await import(/* @vite-ignore */ `../../${actionFiles.get(what)}`)) as Record<
+    const actions = (await import(/* @vite-ignore */ `../../${actionFiles.get(what)}`)) as Record<
       string,
       (...args: unknown[]) => Promise<{ ok: boolean } | undefined>
     >
     const name = what.split('/')[1] ?? ''
     const form = formFor(what)
     const call = ['signOut', 'signOutEverywhere'].includes(name)
-      ? module[name]?.()
+      ? actions[name]?.()
       : name === 'switchGym'
-        ? module[name]?.(form)
-        : module[name]?.(null, form)
+        ? actions[name]?.(form)
+        : actions[name]?.(null, form)
     const outcome = await call?.then(
       (result): Outcome => (result === undefined || result.ok ? 'ok' : 'refused'),
       thrown,

@@ -15,7 +15,7 @@ const PASSWORD = 'quiet harbour lantern'
 
 // The pool of the process is the test's own database.
 vi.mock('@/db/client', async (original) => ({
-  ...(await original<typeof import('@/db/client')>()),
+  ...(await original<object>()),
   database: () => test.db,
   databaseSql: () => test.sql,
 }))

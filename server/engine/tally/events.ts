@@ -1,6 +1,7 @@
 /** What a member does in class: the only thing that a player stores. */
 import { z } from 'zod'
-import { HURT_PLACES, RED_FLAG_SIGNS, STOP_SIGNS, COUNTINGS, COUNTED_BY } from './names'
+import type { RED_FLAG_SIGNS } from './names'
+import { HURT_PLACES, STOP_SIGNS, COUNTINGS, COUNTED_BY } from './names'
 import { idSchema, slugSchema } from '../spec/schema'
 import { REASONS } from '../spec/names'
 

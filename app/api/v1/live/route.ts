@@ -10,7 +10,7 @@ import { sessionOf } from '@/server/auth/viewer'
 import { listenableBoards } from '@/server/data/boards'
 import { defaultDb } from '@/server/data/db'
 import { handler } from '@/server/http/handler'
-import { boardFeed } from '@/server/live/feed'
+import { boardFeed } from '@/server/http/board-feed'
 import { registerStream } from '@/server/live/registry'
 
 export const dynamic = 'force-dynamic'

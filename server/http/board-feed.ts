@@ -2,7 +2,7 @@ import 'server-only'
 import { database, databaseSql } from '@/db/client'
 import { BOARD_CHANNEL } from '@/server/data/attempts'
 import { boardRevisions } from '@/server/data/boards'
-import { BoardFeed } from './boards'
+import { BoardFeed } from '@/server/live/boards'
 
 const kept = globalThis as typeof globalThis & { floorsideFeed?: BoardFeed }
 
