@@ -155,7 +155,7 @@ describe('the table', () => {
 
 const everybody = <T extends string>(rows: Record<string, Record<Visitor, T>>) =>
   Object.entries(rows).flatMap(([what, row]) =>
-    VISITORS.map((visitor) => [what, visitor, row[visitor]] as const),
+    VISITORS.map((visitor): [string, Visitor, T] => [what, visitor, row[visitor]]),
   )
 
 describe('pages', () => {
