@@ -124,7 +124,7 @@ const addressOf = (file: string): string =>
     .join('/')}`
 
 const pageFiles = new Map(files('app', 'page.tsx').map((file) => [addressOf(file), file]))
-const handlerFiles = new Map(
+const handlerFiles = new Map<string, string>(
   files('app', 'route.ts').flatMap((file) =>
     [
       ...readFileSync(file, 'utf8').matchAll(
@@ -133,7 +133,7 @@ const handlerFiles = new Map(
     ].map(([, method]) => [`${method} ${addressOf(file)}`, file] as const),
   ),
 )
-const actionFiles = new Map(
+const actionFiles = new Map<string, string>(
   readdirSync('server/actions')
     .filter((file) => readFileSync(`server/actions/${file}`, 'utf8').startsWith("'use server'"))
     .flatMap((file) =>
@@ -178,10 +178,9 @@ describe('route handlers', () => {
   it.each(everybody(HANDLERS))('%s by %s: %s', async (what, visitor, expected) => {
     token = tokens.get(visitor) ?? null
     const [method = 'GET', address = ''] = what.split(' ')
-    const routes = (await import(/* @vite-ignore */ `../../${handlerFiles.get(what)}`)) as Record<
-      string,
-      (request: Request, context: object) => Promise<Response>
-    >
+    const routes = (await import(
+      /* @vite-ignore */ `../../${handlerFiles.get(what) ?? ''}`
+    )) as Record<string, (request: Request, context: object) => Promise<Response>>
     const ending = new AbortController()
     const url = `http://gym.example${address.replace('[attemptId]', attemptId).replace('[scheduledClassId]', gym.scheduledClassId)}?boards=${gym.scheduledClassId}`
     const answer = await routes[method]?.(
@@ -266,10 +265,9 @@ function formFor(action: string): FormData {
 describe('actions', () => {
   it.each(everybody(ACTIONS))('%s by %s: %s', async (what, visitor, expected) => {
     token = tokens.get(visitor) ?? null
-    const actions = (await import(/* @vite-ignore */ `../../${actionFiles.get(what)}`)) as Record<
-      string,
-      (...args: unknown[]) => Promise<{ ok: boolean } | undefined>
-    >
+    const actions = (await import(
+      /* @vite-ignore */ `../../${actionFiles.get(what) ?? ''}`
+    )) as Record<string, (...args: unknown[]) => Promise<{ ok: boolean } | undefined>>
     const name = what.split('/')[1] ?? ''
     const form = formFor(what)
     const call = ['signOut', 'signOutEverywhere'].includes(name)
