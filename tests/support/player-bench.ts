@@ -205,11 +205,11 @@ export function playerBench(change: Partial<PlayerData> = {}) {
       sound.state = state
       soundWatchers.forEach((tell) => tell(state))
     },
-    /** Time passes with a wake every 50 ms. */
-    async pass(ms: number): Promise<void> {
+    /** Time passes with a wake every 50 ms, or less often where only the end matters. */
+    async pass(ms: number, everyMs = 50): Promise<void> {
       const endMs = nowMs + ms
       while (nowMs < endMs) {
-        const step = Math.min(50, endMs - nowMs)
+        const step = Math.min(everyMs, endMs - nowMs)
         nowMs += step
         wallMs += step
         tickAll()
