@@ -1,5 +1,5 @@
 /** `npm run db:migrate`, `db:seed`, `db:reset`: on the project's own database, or the one DATABASE_URL names. */
-import { atTheEnd, endOnSignals, failWith, finish, start } from './lib/steps.mjs'
+import { endOnSignals, failWith, finish, start } from './lib/steps.mjs'
 import { startLastingDatabase } from './lib/postgres.mjs'
 import { ensurePackages, tsx } from './lib/project.mjs'
 
@@ -8,7 +8,6 @@ async function main() {
   let url = process.env.DATABASE_URL
   if (!url) {
     const database = await startLastingDatabase()
-    if (database.stop) atTheEnd(database.stop)
     url = database.url
   }
   const child = start(process.execPath, [tsx, 'scripts/db.ts', ...process.argv.slice(2)], {

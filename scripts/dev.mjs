@@ -1,5 +1,5 @@
 /** `npm run dev`: the product with reloading, on the project's own database. */
-import { atTheEnd, endOnSignals, failWith, finish, must, start, step } from './lib/steps.mjs'
+import { endOnSignals, failWith, finish, must, start, step } from './lib/steps.mjs'
 import { startLastingDatabase } from './lib/postgres.mjs'
 import { ensurePackages, next, tsx } from './lib/project.mjs'
 
@@ -9,8 +9,8 @@ async function main() {
   if (!url) {
     await step('Database', async () => {
       const database = await startLastingDatabase()
-      if (database.stop) atTheEnd(database.stop)
       url = database.url
+      return database.remark
     })
   }
   const env = { ...process.env, DATABASE_URL: url }

@@ -1,14 +1,5 @@
 /** `npm start`: from a clone to a served product, and from then on quickly. */
-import {
-  endOnSignals,
-  failWith,
-  finish,
-  must,
-  Problem,
-  start,
-  step,
-  atTheEnd,
-} from './lib/steps.mjs'
+import { endOnSignals, failWith, finish, must, Problem, start, step } from './lib/steps.mjs'
 import { isPortUsed, startLastingDatabase } from './lib/postgres.mjs'
 import { ensureBuild, ensurePackages, next, tsx } from './lib/project.mjs'
 
@@ -58,9 +49,8 @@ async function main() {
   else {
     await step('Database', async () => {
       const database = await startLastingDatabase()
-      if (database.stop) atTheEnd(database.stop)
       url = database.url
-      return database.remark ?? (database.stop ? 'started' : 'running already')
+      return database.remark
     })
   }
   const env = {

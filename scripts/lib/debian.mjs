@@ -28,7 +28,15 @@ async function install(what, packages) {
   await asRoot('apt-get', ['update', '-qq'], { ...options, problem })
   await asRoot(
     'apt-get',
-    ['install', '-y', '-qq', '--no-install-recommends', ...packages.split(' ')],
+    [
+      'install',
+      '-y',
+      '-qq',
+      '--no-install-recommends',
+      '-o',
+      'DPkg::Lock::Timeout=120',
+      ...packages.split(' '),
+    ],
     { ...options, problem },
   )
 }
@@ -51,8 +59,10 @@ export async function ensurePostgres() {
     await mkdir('/etc/postgresql-common/createcluster.d', { recursive: true })
     if (!existsSync(conf)) await writeFile(conf, 'create_main_cluster = false\n')
   } else {
-    await run('sudo', ['-n', 'mkdir', '-p', '/etc/postgresql-common/createcluster.d'])
-    await run('sudo', ['-n', 'tee', conf], { input: 'create_main_cluster = false\n' })
+    // Where sudo is refused or missing, the installation below says so.
+    const ignore = () => undefined
+    await run('sudo', ['-n', 'mkdir', '-p', '/etc/postgresql-common/createcluster.d']).catch(ignore)
+    await run('sudo', ['-n', 'tee', conf], { input: 'create_main_cluster = false\n' }).catch(ignore)
   }
   await install('PostgreSQL', 'postgresql')
   const installed = postgresBin()

@@ -1,6 +1,6 @@
 /** What is installed and built, and whether it still fits the sources. */
 import { createHash } from 'node:crypto'
-import { existsSync, readdirSync, readFileSync, statSync } from 'node:fs'
+import { existsSync, readdirSync, readFileSync, rmSync, statSync } from 'node:fs'
 import { mkdir, readFile, writeFile } from 'node:fs/promises'
 import { HOME, must, ROOT } from './steps.mjs'
 
@@ -50,19 +50,25 @@ async function keep(name, value) {
   await writeFile(`${HOME}/${name}`, `${value}\n`)
 }
 
+/** Whether node_modules holds what the lock file asks for. npm keeps a lock file of what it installed there. */
+function packagesFit() {
+  const installed = `${ROOT}/node_modules/.package-lock.json`
+  if (!existsSync(installed)) return false
+  const wanted = JSON.parse(readFileSync(`${ROOT}/package-lock.json`, 'utf8')).packages
+  const there = JSON.parse(readFileSync(installed, 'utf8')).packages
+  return Object.entries(wanted).every(
+    ([path, { version, optional }]) =>
+      path === '' || (there[path] ? there[path].version === version : optional === true),
+  )
+}
+
 /** npm's packages as the lock file has them; nothing where they fit already. */
 export async function ensurePackages() {
-  const lock = createHash('sha256')
-    .update(readFileSync(`${ROOT}/package-lock.json`))
-    .digest('hex')
-  if (existsSync(`${ROOT}/node_modules/.package-lock.json`) && (await kept('packages')) === lock)
-    return 'up to date'
-  // Development packages too: the build needs them, and an environment of NODE_ENV=production would leave them out.
+  if (packagesFit()) return 'up to date'
+  // Development packages too: the build needs them, and NODE_ENV=production would leave them out.
   await must('npm', ['ci', '--include=dev', '--no-audit', '--no-fund'], {
-    problem:
-      'The packages could not be installed. Is there a network, and is Node 20.9 or newer? Try again; what npm said last:',
+    problem: 'The packages could not be installed. Is there a network? Then try again. npm said:',
   })
-  await keep('packages', lock)
   return 'installed'
 }
 
@@ -81,4 +87,15 @@ export async function ensureBuild(folder, env = process.env) {
   })
   await keep(`build-${folder}`, digest)
   return 'built'
+}
+
+export const bin = (name) => `${ROOT}/node_modules/.bin/${name}`
+/** The test projects that need no database and no browser. */
+export const UNIT = ['engine', 'contract', 'components', 'hooks']
+
+/** Types that builds made of their routes; those of a page that is gone would fail the types of all others. */
+export function removeRouteTypes() {
+  for (const folder of ['.next/types', '.next-dev/dev/types', '.next-test/types']) {
+    rmSync(`${ROOT}/${folder}`, { recursive: true, force: true })
+  }
 }

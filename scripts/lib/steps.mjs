@@ -1,5 +1,6 @@
 /** What the commands share: steps that say what they do and how long it took, child processes that end. */
 import { spawn } from 'node:child_process'
+import { readFileSync } from 'node:fs'
 import { fileURLToPath } from 'node:url'
 
 export const ROOT = fileURLToPath(new URL('../../', import.meta.url)).replace(/\/$/, '')
@@ -81,14 +82,26 @@ export function endOnSignals() {
   ]) {
     process.on(signal, () => void finish(code))
   }
-  const parent = process.ppid
+  const starters = startersOf()
   setInterval(() => {
-    if (process.ppid !== parent) void finish(129)
+    if (String(startersOf()) !== String(starters)) void finish(129)
   }, 2_000).unref()
 }
 
-/** Starts a program in a group of its own. */
-export function start(command, args, options = {}) {
+/** Who started us: the parent and, behind the shell that `npm run` puts between, npm itself. */
+function startersOf() {
+  if (!process.env.npm_lifecycle_event) return [process.ppid]
+  try {
+    const status = readFileSync(`/proc/${process.ppid}/status`, 'utf8')
+    return [process.ppid, /^PPid:\s*(\d+)/m.exec(status)?.[1]]
+  } catch {
+    return [process.ppid]
+  }
+}
+
+/** Starts a program in a group of its own. Once the end has begun, only what belongs to it. */
+export function start(command, args, { isEnd = false, ...options } = {}) {
+  if (isEnding && !isEnd) throw new Problem('Ended before it was done.')
   const child = spawn(command, args, { cwd: ROOT, detached: true, ...options })
   children.add(child)
   child.once('exit', () => children.delete(child))
@@ -99,6 +112,7 @@ export function start(command, args, options = {}) {
 /** Runs a program to its end; resolves with its code and output. Never rejects for the code. */
 export function run(command, args, { show = false, input, ...options } = {}) {
   return new Promise((resolve, reject) => {
+    // Throws inside the promise when the command is ending: then it rejects.
     const child = start(command, args, {
       stdio: [input === undefined ? 'ignore' : 'pipe', 'pipe', 'pipe'],
       ...options,
@@ -135,6 +149,7 @@ export async function must(command, args, options = {}) {
 
 /** Prints a problem as its line, anything else with its stack, and ends. */
 export async function failWith(error) {
+  if (isEnding) return
   console.error(error instanceof Problem ? `\n${error.message}` : error)
   await finish(1)
 }
