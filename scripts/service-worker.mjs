@@ -1,7 +1,7 @@
 /**
  * Writes public/sw.js: a class that was loaded comes back at a reload without a network. Its caches are
  * named by the build, so a new one starts clean. `node scripts/service-worker.mjs [BUILD]`, after the
- * build, whose own id is taken where none is given.
+ * build, whose own id is taken where none is given. With `-` after it, to standard output.
  */
 import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs'
 
@@ -69,4 +69,5 @@ self.addEventListener('fetch', (event) => {
   else if (/^\\/(_next\\/static|sounds|fonts)\\//.test(address.pathname)) event.respondWith(fromCacheFirst(request))
 })
 `
-writeFileSync(new URL('../public/sw.js', import.meta.url), source)
+if (process.argv[3] === '-') process.stdout.write(source)
+else writeFileSync(new URL('../public/sw.js', import.meta.url), source)
