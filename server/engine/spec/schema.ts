@@ -4,28 +4,63 @@
  */
 import { z } from 'zod'
 
-const whole = (min: number, max: number) => z.number().int().min(min).max(max)
-const text = (min: number, max: number) => z.string().min(min).max(max)
+const whole = (min: number, max: number) => {
+  const error = `Give a whole number from ${grouped(min)} to ${grouped(max)}.`
+  return z.number({ error }).int({ error }).min(min, { error }).max(max, { error })
+}
+
+function grouped(value: number): string {
+  return String(value).replace(/\B(?=(\d{3})+$)/g, ',')
+}
+
+/** Text by its characters as people count them, not by UTF-16 units. */
+const text = (min: number, max: number) => {
+  const error = `Give text of ${min} to ${max} characters.`
+  return z.string({ error }).refine(
+    (value) => {
+      const length = [...value].length
+      return length >= min && length <= max
+    },
+    { error },
+  )
+}
+
 /** Seconds that may have one decimal: tempo figures and change cost. */
-const tenths = (min: number, max: number) =>
-  z
-    .number()
-    .min(min)
-    .max(max)
-    .refine((value) => Math.abs(value * 10 - Math.round(value * 10)) < 1e-9, {
-      message: 'Give at most one decimal',
-    })
+const tenths = (min: number, max: number) => {
+  const error = `Give seconds from ${min} to ${max}, with one decimal at most.`
+  return z
+    .number({ error })
+    .min(min, { error })
+    .max(max, { error })
+    .refine((value) => Math.abs(value * 10 - Math.round(value * 10)) < 1e-9, { error })
+}
+
+const oneOf = <const T extends readonly [string, ...string[]]>(values: T) =>
+  z.enum(values, { error: `Choose one of: ${values.join(', ')}.` })
+const list = <T extends z.ZodType>(item: T, min: number, max: number, what: string) => {
+  const error = `Give ${min === 0 ? 'at most' : `${min} to`} ${max} ${what}.`
+  return z.array(item, { error }).min(min, { error }).max(max, { error })
+}
 
 export const BLOCK_KINDS = ['warm-up', 'work', 'finisher', 'mobility', 'rest', 'cool-down'] as const
 export const CUE_KINDS = ['form', 'breath', 'pace', 'safety', 'option', 'kit', 'next'] as const
 export const SIDES = ['together', 'alternate', 'each'] as const
 
-export const idSchema = z.string().regex(/^[a-z0-9-]{1,40}$/)
-export const slugSchema = z.string().regex(/^[a-z0-9-]{1,60}$/)
-export const sidesSchema = z.enum(SIDES)
+const ID_ERROR = 'Give an id of 1 to 40 small letters, digits and hyphens.'
+const SLUG_ERROR = 'Give a name of 1 to 60 small letters, digits and hyphens.'
+
+export const idSchema = z
+  .string({ error: ID_ERROR })
+  .regex(/^[a-z0-9-]{1,40}$/, { error: ID_ERROR })
+export const slugSchema = z
+  .string({ error: SLUG_ERROR })
+  .regex(/^[a-z0-9-]{1,60}$/, { error: SLUG_ERROR })
+export const sidesSchema = oneOf(SIDES)
 
 /** Seconds eccentric, bottom, concentric, top: the trade's four figures. */
-export const tempoSchema = z.tuple([tenths(0, 60), tenths(0, 60), tenths(0, 60), tenths(0, 60)])
+export const tempoSchema = z.tuple([tenths(0, 60), tenths(0, 60), tenths(0, 60), tenths(0, 60)], {
+  error: 'Give four figures: seconds eccentric, bottom, concentric, top.',
+})
 export const changeSchema = tenths(0, 600)
 
 const repCount = whole(1, 500)
@@ -33,11 +68,11 @@ export const ladderSchema = z.strictObject({
   from: repCount,
   step: whole(-500, 500),
   to: repCount.optional(),
-  then: z.enum(['hold', 'repeat', 'done']).optional(),
+  then: oneOf(['hold', 'repeat', 'done']).optional(),
 })
 export const repListSchema = z.strictObject({
-  list: z.array(repCount).min(1).max(40),
-  then: z.enum(['hold', 'repeat', 'done']).optional(),
+  list: list(repCount, 1, 40, 'entries'),
+  then: oneOf(['hold', 'repeat', 'done']).optional(),
 })
 export const repsSchema = z.union([repCount, ladderSchema, repListSchema])
 
@@ -48,7 +83,7 @@ const optionUseSchema = z.strictObject({
 })
 
 const noteSchema = text(1, 80).optional()
-const optionUsesSchema = z.array(optionUseSchema).optional()
+const optionUsesSchema = list(optionUseSchema, 0, 30, 'options').optional()
 
 export const stationSchema = z.strictObject({
   movement: slugSchema,
@@ -78,13 +113,13 @@ export const holdStationSchema = z.strictObject({
   options: optionUsesSchema,
 })
 
-const stations = <T extends z.ZodType>(station: T) => z.array(station).min(1).max(12)
+const stations = <T extends z.ZodType>(station: T) => list(station, 1, 12, 'stations')
 
 export const formatSchema = z.discriminatedUnion('type', [
   z.strictObject({
     type: z.literal('rounds'),
     seconds: whole(1, 10_800),
-    counted: z.boolean().optional(),
+    counted: z.boolean({ error: 'Give true or false.' }).optional(),
     stations: stations(stationSchema),
   }),
   z.strictObject({
@@ -108,14 +143,14 @@ export const formatSchema = z.discriminatedUnion('type', [
   z.strictObject({ type: z.literal('holds'), stations: stations(holdStationSchema) }),
   z.strictObject({
     type: z.literal('rest'),
-    seconds: whole(1, 3_600),
-    atLeast: whole(0, 3_600).optional(),
-    atMost: whole(0, 3_600).optional(),
+    seconds: whole(1, 10_800),
+    atLeast: whole(0, 10_800).optional(),
+    atMost: whole(0, 10_800).optional(),
   }),
 ])
 
 export const anchorSchema = z.union([
-  z.strictObject({ from: z.enum(['start', 'end']), s: whole(0, 10_800) }),
+  z.strictObject({ from: oneOf(['start', 'end']), s: whole(0, 10_800) }),
   z.strictObject({ round: whole(1, 10_000) }),
   z.strictObject({ station: whole(0, 11), round: whole(1, 10_000).optional() }),
 ])
@@ -124,36 +159,36 @@ export const cueSchema = z.strictObject({
   id: idSchema,
   text: text(1, 80),
   spoken: text(1, 200).optional(),
-  kind: z.enum(CUE_KINDS),
-  say: z.boolean().optional(),
+  kind: oneOf(CUE_KINDS),
+  say: z.boolean({ error: 'Give true or false.' }).optional(),
   show: z.strictObject({ station: whole(0, 11), option: slugSchema.optional() }).optional(),
   at: anchorSchema,
 })
 
 export const blockSchema = z.strictObject({
   id: idSchema,
-  kind: z.enum(BLOCK_KINDS),
+  kind: oneOf(BLOCK_KINDS),
   title: text(1, 80),
   brief: text(1, 400).optional(),
   briefSeconds: whole(0, 300).optional(),
   countIn: whole(0, 15).optional(),
   format: formatSchema,
-  cues: z.array(cueSchema).max(60).optional(),
+  cues: list(cueSchema, 0, 60, 'cues').optional(),
 })
 
 export const kitItemSchema = z.strictObject({
   item: text(1, 60),
   count: whole(1, 100),
-  optional: z.boolean().optional(),
+  optional: z.boolean({ error: 'Give true or false.' }).optional(),
 })
 
 export const sessionSpecSchema = z.strictObject({
-  spec: z.literal(1),
+  spec: z.literal(1, { error: 'Give 1: the only version of the session spec.' }),
   title: text(1, 80),
   focus: text(1, 120).optional(),
-  intendedRpe: z.number().min(0).max(10).optional(),
-  kit: z.array(kitItemSchema).max(20).optional(),
-  blocks: z.array(blockSchema).min(1).max(40),
+  intendedRpe: whole(0, 10).optional(),
+  kit: list(kitItemSchema, 0, 20, 'items').optional(),
+  blocks: list(blockSchema, 1, 40, 'blocks'),
 })
 
 export type SessionSpec = z.infer<typeof sessionSpecSchema>

@@ -1,0 +1,526 @@
+/** What is wrong with a class, all of it at once, each with its path and what to do. */
+import type { z } from 'zod'
+import { movementOptionSchema, movementSchema, type Movement } from './movement'
+import { AS_PLANNED } from './names'
+import { rungCount } from './reps'
+import {
+  blockSchema,
+  cueSchema,
+  formatSchema,
+  repsSchema,
+  sessionSpecSchema,
+  type Block,
+  type Cue,
+  type Format,
+  type Reps,
+} from './schema'
+import type { PublishedVersion } from './version'
+
+export interface Problem {
+  /** Such as `blocks[2].format.stations[0].reps.to`; empty for the whole document. */
+  path: string
+  message: string
+}
+
+type Key = string | number
+type Path = readonly Key[]
+
+/** The longest class: 3 hours of class time. */
+export const MOST_CLASS_SECONDS = 10_800
+
+function pathText(path: Path): string {
+  let text = ''
+  for (const key of path) {
+    if (typeof key === 'number') text += `[${key}]`
+    else text += text === '' ? key : `.${key}`
+  }
+  return text
+}
+
+class Found {
+  readonly problems: Problem[] = []
+  private readonly seen = new Set<string>()
+
+  add(path: Path, message: string): void {
+    const text = pathText(path)
+    const key = `${text}\n${message}`
+    if (this.seen.has(key)) return
+    this.seen.add(key)
+    this.problems.push({ path: text, message })
+  }
+}
+
+function isObject(value: unknown): value is Record<string, unknown> {
+  return typeof value === 'object' && value !== null && !Array.isArray(value)
+}
+
+function valueAt(root: unknown, path: Path): unknown {
+  let value = root
+  for (const key of path) {
+    if (Array.isArray(value) && typeof key === 'number') value = value[key]
+    else if (isObject(value) && Object.hasOwn(value, key)) value = value[String(key)]
+    else return undefined
+  }
+  return value
+}
+
+// ---------------------------------------------------------------------------------------------
+// Shape
+
+const UNION_HELP: Record<string, string> = {
+  reps: 'Give a whole number from 1 to 500, a ladder { from, step } or a list { list }.',
+  at: 'Say when: { from, s }, { round } or { station }.',
+}
+
+/** Which of a union's shapes was meant, by what is there. */
+function branchMeant(key: Key | undefined, value: unknown): number | null {
+  if (key === 'reps') {
+    if (typeof value === 'number') return 0
+    if (!isObject(value)) return null
+    if ('list' in value) return 2
+    return Object.keys(value).length > 0 ? 1 : null
+  }
+  if (key === 'at' && isObject(value)) {
+    if ('from' in value || 's' in value) return 0
+    if ('station' in value) return 2
+    if ('round' in value) return 1
+  }
+  return null
+}
+
+function addIssue(found: Found, root: unknown, issue: z.core.$ZodIssue, base: Path): void {
+  const path: Path = [
+    ...base,
+    ...issue.path.map((key) => (typeof key === 'symbol' ? String(key) : key)),
+  ]
+  const value = valueAt(root, path)
+  if (issue.code === 'unrecognized_keys') {
+    for (const key of issue.keys)
+      found.add([...path, key], 'Nothing of this name belongs here. Remove it.')
+    return
+  }
+  if (issue.code === 'invalid_union') {
+    const key = path.at(-1)
+    if (key === 'type') {
+      found.add(path, 'Choose one of: rounds, for-time, intervals, every, holds, rest.')
+      return
+    }
+    const meant = branchMeant(key, value)
+    const issues = meant === null ? undefined : issue.errors[meant]
+    if (issues && issues.length > 0) for (const one of issues) addIssue(found, root, one, path)
+    else found.add(path, UNION_HELP[String(key)] ?? 'This has none of the shapes that it may have.')
+    return
+  }
+  if (value === undefined && path.length > 0) {
+    const help = issue.message.startsWith('Invalid') ? '' : ` ${issue.message}`
+    found.add(path, `This is missing.${help}`)
+    return
+  }
+  found.add(path, issue.message.startsWith('Invalid') ? wrongKind(issue) : issue.message)
+}
+
+function wrongKind(issue: z.core.$ZodIssue): string {
+  if (issue.code === 'invalid_type' && issue.expected === 'object') return 'Give an object.'
+  if (issue.code === 'invalid_type' && issue.expected === 'array') return 'Give a list.'
+  return 'This has not the kind that belongs here.'
+}
+
+// ---------------------------------------------------------------------------------------------
+// Rules over several fields
+
+function checkReps(found: Found, reps: Reps, path: Path): void {
+  if (typeof reps === 'number' || 'list' in reps) return
+  const { from, step, to, then } = reps
+  if (step === 0) {
+    found.add(
+      [...path, 'step'],
+      'A ladder needs a step up or down; for the same reps every round give one number.',
+    )
+    return
+  }
+  if (to === undefined) {
+    if (step < 0)
+      found.add(
+        [...path, 'to'],
+        'This is missing. A ladder that goes down needs its last rung, 1 or more.',
+      )
+    if (then !== undefined)
+      found.add(
+        [...path, 'then'],
+        'Without ‘to’ the ladder has no last rung, so nothing comes then. Add ‘to’ or remove ‘then’.',
+      )
+    return
+  }
+  if (step > 0 ? to < from : to > from) {
+    found.add(
+      [...path, 'to'],
+      `A ladder from ${from} in steps of ${step} never comes to ${to}. Turn the step or the ends round.`,
+    )
+  }
+}
+
+/** How many rounds a `done` ladder or list lasts; null where it goes on. */
+function rungsUntilDone(reps: Reps): number | null {
+  return typeof reps !== 'number' && reps.then === 'done' ? rungCount(reps) : null
+}
+
+/** Every reps of a format's stations, their options' own among them, with its path under the format. */
+function everyReps(format: unknown): { reps: unknown; path: Path; station: number }[] {
+  if (!isObject(format) || !Array.isArray(format['stations'])) return []
+  return format['stations'].flatMap((station: unknown, index) => {
+    if (!isObject(station)) return []
+    const own =
+      'reps' in station
+        ? [{ reps: station['reps'], path: ['stations', index, 'reps'], station: index }]
+        : []
+    const options = Array.isArray(station['options']) ? station['options'] : []
+    return [
+      ...own,
+      ...options.flatMap((option: unknown, place) =>
+        isObject(option) && 'reps' in option
+          ? [
+              {
+                reps: option['reps'],
+                path: ['stations', index, 'options', place, 'reps'],
+                station: index,
+              },
+            ]
+          : [],
+      ),
+    ]
+  })
+}
+
+function checkLadders(found: Found, format: unknown, path: Path): void {
+  for (const one of everyReps(format)) {
+    const parsed = repsSchema.safeParse(one.reps)
+    if (parsed.success) checkReps(found, parsed.data, [...path, ...one.path])
+  }
+}
+
+/** `done` that runs out where a set number of rounds is asked. */
+function checkRungs(found: Found, format: Format, path: Path): void {
+  if (format.type !== 'for-time' && format.type !== 'every') return
+  for (const one of everyReps(format)) {
+    const parsed = repsSchema.safeParse(one.reps)
+    const rungs = parsed.success ? rungsUntilDone(parsed.data) : null
+    if (rungs === null) continue
+    if (format.type === 'for-time' && format.rounds > rungs) {
+      found.add(
+        [...path, 'rounds'],
+        `Station ${one.station} has ${rungs} rungs and is then done. Ask for ${rungs} rounds at most, or let the ladder hold or repeat.`,
+      )
+    }
+    if (format.type === 'every') {
+      const visits = Math.ceil((format.times - one.station) / format.stations.length)
+      if (visits > rungs) {
+        found.add(
+          [...path, ...one.path],
+          `This station comes ${visits} times and has ${rungs} rungs. Let the ladder hold or repeat, or give fewer times.`,
+        )
+      }
+    }
+  }
+}
+
+function checkOptions(found: Found, format: Format, path: Path): void {
+  if (format.type === 'rest') return
+  format.stations.forEach((station, index) => {
+    const seen = new Set<string>()
+    station.options?.forEach((use, place) => {
+      if (seen.has(use.option)) {
+        found.add(
+          [...path, 'stations', index, 'options', place, 'option'],
+          `The option ${use.option} is named twice. Name it once.`,
+        )
+      }
+      seen.add(use.option)
+    })
+  })
+}
+
+function checkRest(found: Found, format: Format, path: Path): void {
+  if (format.type !== 'rest') return
+  const { seconds, atLeast, atMost } = format
+  if (atLeast !== undefined && atLeast > seconds) {
+    found.add(
+      [...path, 'atLeast'],
+      `The least time is longer than the rest itself. Give ${seconds} or less.`,
+    )
+  }
+  if (atMost !== undefined && atMost < seconds) {
+    found.add(
+      [...path, 'atMost'],
+      `The most time is shorter than the rest itself. Give ${seconds} or more.`,
+    )
+  }
+}
+
+/** Seconds of a block's body. */
+export function bodySeconds(format: Format): number {
+  switch (format.type) {
+    case 'rounds':
+    case 'rest':
+      return format.seconds
+    case 'for-time':
+      return format.cap
+    case 'every':
+      return format.seconds * format.times
+    case 'intervals': {
+      const { stations, rounds, roundRest = 0 } = format
+      const last = stations.at(-1)
+      if (!last) return 0
+      const work = stations.reduce(
+        (sum, one) => sum + (one.sides === 'each' ? 2 * one.work + (one.switch ?? 0) : one.work),
+        0,
+      )
+      const rests = stations.reduce((sum, one) => sum + one.rest, 0)
+      const between = roundRest > 0 ? roundRest : last.rest
+      return rounds * (work + rests - last.rest) + (rounds - 1) * between
+    }
+    case 'holds':
+      return format.stations.reduce(
+        (sum, one, index) =>
+          sum +
+          (one.sides === 'each' ? 2 * one.seconds + (one.switch ?? 5) : one.seconds) +
+          (index < format.stations.length - 1 ? (one.rest ?? 0) : 0),
+        0,
+      )
+  }
+}
+
+/** Where a round or station that a cue waits for cannot come: which part of it, and why. */
+function neverComes(
+  format: Format,
+  at: Exclude<Cue['at'], { from: string }>,
+): { key: string; why: string } | null {
+  if (format.type === 'rest') {
+    return {
+      key: 'round' in at && !('station' in at) ? 'round' : 'station',
+      why: 'A rest has no rounds or stations. Anchor the cue from its start or end.',
+    }
+  }
+  const station = 'station' in at ? at.station : undefined
+  const round = at.round ?? 1
+  if (station !== undefined && station >= format.stations.length) {
+    return {
+      key: 'station',
+      why: `The block has ${format.stations.length} stations, counted from 0: give ${format.stations.length - 1} at most.`,
+    }
+  }
+  const most = mostRounds(format, station ?? 0)
+  if (round > most) {
+    return {
+      key: at.round === undefined ? 'station' : 'round',
+      why:
+        most === 0
+          ? 'This station never comes in so few times.'
+          : `That round never comes: the last one is ${most}.`,
+    }
+  }
+  return null
+}
+
+/** The last round in which a station comes. */
+function mostRounds(format: Exclude<Format, { type: 'rest' }>, station: number): number {
+  switch (format.type) {
+    case 'rounds':
+      return Math.min(...format.stations.map((one) => rungsUntilDone(one.reps) ?? Infinity))
+    case 'for-time':
+    case 'intervals':
+      return format.rounds
+    case 'holds':
+      return 1
+    case 'every':
+      return Math.max(0, Math.ceil((format.times - station) / format.stations.length))
+  }
+}
+
+function checkCues(found: Found, format: Format, cues: unknown, path: Path): void {
+  if (!Array.isArray(cues)) return
+  const length = bodySeconds(format)
+  cues.forEach((raw: unknown, index) => {
+    const parsed = cueSchema.safeParse(raw)
+    if (!parsed.success) return
+    const { at, show } = parsed.data
+    if ('from' in at) {
+      if (at.s > length)
+        found.add(
+          [...path, index, 'at', 's'],
+          `The block is ${length} s long. Give ${length} or less.`,
+        )
+    } else {
+      const never = neverComes(format, at)
+      if (never) found.add([...path, index, 'at', never.key], never.why)
+    }
+    const stations = format.type === 'rest' ? 0 : format.stations.length
+    if (show && show.station >= stations) {
+      found.add(
+        [...path, index, 'show', 'station'],
+        stations === 0
+          ? 'A rest has no station to show. Remove ‘show’.'
+          : `The block has ${stations} stations, counted from 0: give ${stations - 1} at most.`,
+      )
+    }
+  })
+}
+
+function checkUnique(found: Found, items: unknown, path: Path, what: string): void {
+  if (!Array.isArray(items)) return
+  const seen = new Set<string>()
+  items.forEach((item: unknown, index) => {
+    const id = isObject(item) ? item['id'] : undefined
+    if (typeof id !== 'string') return
+    if (seen.has(id))
+      found.add([...path, index, 'id'], `${what} has this id already. Give each its own.`)
+    seen.add(id)
+  })
+}
+
+function countInSeconds(
+  block: Pick<Block, 'kind' | 'countIn' | 'brief'>,
+  isAfterRest: boolean,
+): number {
+  if (block.countIn !== undefined) return block.countIn
+  if (block.kind !== 'work' && block.kind !== 'finisher') return 0
+  return isAfterRest && block.brief === undefined ? 0 : 5
+}
+
+function checkRules(found: Found, spec: unknown): void {
+  const blocks = isObject(spec) && Array.isArray(spec['blocks']) ? spec['blocks'] : []
+  checkUnique(found, blocks, ['blocks'], 'Another block')
+  let seconds = 0
+  let isAfterRest = false
+  blocks.forEach((raw: unknown, index) => {
+    if (!isObject(raw)) return
+    const path: Path = ['blocks', index]
+    checkLadders(found, raw['format'], [...path, 'format'])
+    checkUnique(found, raw['cues'], [...path, 'cues'], 'Another cue of this block')
+    const format = formatSchema.safeParse(raw['format'])
+    if (format.success) {
+      checkRungs(found, format.data, [...path, 'format'])
+      checkOptions(found, format.data, [...path, 'format'])
+      checkRest(found, format.data, [...path, 'format'])
+      checkCues(found, format.data, raw['cues'], [...path, 'cues'])
+      seconds += bodySeconds(format.data)
+    }
+    const block = blockSchema.safeParse(raw)
+    if (block.success) seconds += countInSeconds(block.data, isAfterRest)
+    isAfterRest = raw['kind'] === 'rest' || (format.success && format.data.type === 'rest')
+  })
+  if (seconds > MOST_CLASS_SECONDS) {
+    const minutes = Math.ceil(seconds / 60)
+    found.add(
+      ['blocks'],
+      `The class is ${minutes} minutes of class time. Keep it to 180 (3 hours).`,
+    )
+  }
+}
+
+// ---------------------------------------------------------------------------------------------
+// The doors
+
+/**
+ * Everything that is wrong with a session spec, in the order of shape first and rules after it; empty
+ * where it is sound. Takes anything and never throws. Whether movements are in a library is not asked.
+ */
+export function check(input: unknown): Problem[] {
+  const found = new Found()
+  if (!isObject(input)) {
+    found.add([], 'A class is an object with spec, title and blocks.')
+    return found.problems
+  }
+  const parsed = sessionSpecSchema.safeParse(input)
+  if (!parsed.success) for (const issue of parsed.error.issues) addIssue(found, input, issue, [])
+  checkRules(found, input)
+  return found.problems
+}
+
+/**
+ * A bare spec or a published version `{ spec, movements }`, where movements are a list or an object by
+ * slug. Gives the version (without movements for a bare spec), or every problem: of the spec with the
+ * paths of a bare one, of movements under `movements`.
+ */
+export function parseSpecOrVersion(
+  input: unknown,
+): { version: PublishedVersion; problems?: never } | { problems: Problem[]; version?: never } {
+  const isVersion = isObject(input) && isObject(input['spec'])
+  const spec = isVersion ? input['spec'] : input
+  const problems = check(spec)
+  const movements: Movement[] = []
+  if (isVersion) {
+    const read = readMovements(input['movements'])
+    movements.push(...read.movements)
+    problems.push(...read.problems)
+  }
+  if (problems.length > 0) return { problems }
+  return { version: { spec: sessionSpecSchema.parse(spec), movements } }
+}
+
+/** Movements with what a forecast needs; the words of coaching may be missing in a file made by hand. */
+function readMovements(raw: unknown): { movements: Movement[]; problems: Problem[] } {
+  const found = new Found()
+  const movements: Movement[] = []
+  if (raw === undefined || raw === null) return { movements, problems: [] }
+  if (typeof raw !== 'object') {
+    found.add(['movements'], 'Give a list of movements, or an object by their slugs.')
+    return { movements, problems: found.problems }
+  }
+  for (const [key, value] of Array.isArray(raw) ? raw.entries() : Object.entries(raw)) {
+    if (!isObject(value)) {
+      found.add(['movements', key], 'Give an object.')
+      continue
+    }
+    const slug = value['slug'] ?? key
+    const filled = {
+      ...BLANK,
+      name: String(slug),
+      ...value,
+      slug,
+      options: filledOptions(value['options']),
+    }
+    const parsed = movementSchema.safeParse(filled)
+    if (parsed.success) movements.push(parsed.data)
+    else for (const issue of parsed.error.issues) addIssue(found, filled, issue, ['movements', key])
+  }
+  return { movements, problems: found.problems }
+}
+
+const BLANK = {
+  pattern: 'mobility',
+  position: 'standing',
+  impact: 'none',
+  joints: [],
+  kit: [],
+  start: '',
+  steps: [],
+  cues: [],
+  faults: [],
+  stopWhen: '',
+} as const
+
+function filledOptions(raw: unknown): unknown {
+  const planned = {
+    option: AS_PLANNED,
+    name: 'As planned',
+    level: 'as-planned',
+    reasons: [],
+    description: '',
+  }
+  if (raw === undefined) return [planned]
+  if (!Array.isArray(raw)) return raw
+  const options = raw.map((option: unknown) => {
+    if (!isObject(option)) return option
+    const slug = option['option'] ?? option['slug']
+    const filled = {
+      ...planned,
+      level: slug === AS_PLANNED ? 'as-planned' : 'easier',
+      name: String(slug),
+      ...option,
+      option: slug,
+    }
+    return movementOptionSchema.safeParse(filled).success ? filled : option
+  })
+  const hasPlanned = options.some((option) => isObject(option) && option['level'] === 'as-planned')
+  return hasPlanned ? options : [...options, planned]
+}
