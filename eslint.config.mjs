@@ -1,3 +1,4 @@
+import { readdirSync } from 'node:fs'
 import nextVitals from 'eslint-config-next/core-web-vitals'
 import nextTypescript from 'eslint-config-next/typescript'
 
@@ -38,18 +39,9 @@ export const ROOMS = {
   scripts: ['scripts', 'db', 'server/data', ...PURE],
 }
 const TOP = ['app', 'components', 'db', 'hooks', 'scripts', 'tests', 'server']
-/** Features that every other one may draw with. */
+/** Features that every other one may draw with: a feature imports no other but these. */
 const SHARED_FEATURES = ['figure', 'lane', 'ui']
-export const FEATURES = [
-  'account',
-  'attempt',
-  'board',
-  'classes',
-  'health',
-  'player',
-  'site',
-  ...SHARED_FEATURES,
-]
+export const FEATURES = readdirSync(new URL('components', import.meta.url))
 
 const escaped = (text) => text.replaceAll('/', '\\/')
 /** Any import by alias, or climbing out of the folder, of something that is not among `allowed`. */
@@ -95,10 +87,12 @@ const features = FEATURES.map((feature) => ({
       'error',
       {
         patterns: [
-          onlyFrom(
-            ROOMS.components,
-            `components/ may import from: ${ROOMS.components.join(', ')} (DEVELOPERS.md).`,
-          ),
+          feature === 'ui'
+            ? onlyFrom(['components/ui'], 'components/ui knows no word of the product.')
+            : onlyFrom(
+                ROOMS.components,
+                `components/ may import from: ${ROOMS.components.join(', ')} (DEVELOPERS.md).`,
+              ),
           {
             regex: `^(?:@\\/components\\/|\\.\\.\\/)(?!(?:${(feature === 'ui' ? ['ui'] : [feature, ...SHARED_FEATURES]).join('|')})\\/)(?:${FEATURES.join('|')})\\/`,
             message: 'A feature imports no other feature but figure/, lane/ and ui/.',
