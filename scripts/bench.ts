@@ -1,0 +1,148 @@
+/**
+ * `npm run bench`: what the product's figures come to on this computer, against the bars it holds itself
+ * to. Ends with 1 where a bar is missed. Not part of `npm test`: a busy computer fails it for no fault.
+ */
+import { performance } from 'node:perf_hooks'
+import { demoMovements } from '@/db/seed/movements'
+import { forecast, TIRING } from '@/server/engine/pace/forecast'
+import { check } from '@/server/engine/spec/problems'
+import type { Block, Cue } from '@/server/engine/spec/schema'
+import type { PublishedVersion } from '@/server/engine/spec/version'
+import type { ClassEvent } from '@/server/engine/tally/events'
+import { fold } from '@/server/engine/tally/fold'
+import { compile, realLengthMs } from '@/server/engine/timeline/compile'
+
+interface Row {
+  what: string
+  measuredMs: number
+  barMs: number
+}
+
+const WARM_UP_RUNS = 20
+const RUNS = 101
+
+/** Median of many runs after warming up, in milliseconds. */
+function medianMs(work: () => unknown): number {
+  for (let run = 0; run < WARM_UP_RUNS; run += 1) work()
+  const times = Array.from({ length: RUNS }, () => {
+    const from = performance.now()
+    work()
+    return performance.now() - from
+  }).sort((a, b) => a - b)
+  return times[Math.floor(times.length / 2)] ?? Number.NaN
+}
+
+const BLOCKS = 40
+const BLOCK_SECONDS = 240
+const CUES = 60
+const STATIONS = 12
+
+function cues(): Cue[] {
+  return Array.from({ length: CUES }, (_, index) => ({
+    id: `cue-${index}`,
+    text: 'Breathe out on the way up',
+    kind: 'breath',
+    at: { from: 'start', s: index * 4 },
+  }))
+}
+
+/** The longest class that a spec may describe: 40 blocks, 3 hours, 60 cues a block. */
+function longestClass(): PublishedVersion {
+  const slugs = demoMovements.slice(0, STATIONS).map((movement) => movement.slug)
+  const at = (index: number) => slugs[index % slugs.length] ?? ''
+  const stations = Array.from({ length: STATIONS }, (_, index) => at(index))
+  const blocks = Array.from({ length: BLOCKS }, (_, index): Block => {
+    const isRounds = index % 2 === 0
+    return {
+      id: `block-${index}`,
+      kind: 'work',
+      title: `Block ${index + 1}`,
+      brief: 'One line of what is to come.',
+      briefSeconds: 24,
+      cues: cues(),
+      format: isRounds
+        ? {
+            type: 'rounds',
+            seconds: BLOCK_SECONDS,
+            stations: stations.map((movement) => ({ movement, reps: { from: 1, step: 1 } })),
+          }
+        : {
+            type: 'intervals',
+            rounds: 4,
+            stations: stations.map((movement) => ({ movement, work: 4, rest: 1 })),
+          },
+    }
+  })
+  return { spec: { spec: 1, title: 'The longest', blocks }, movements: demoMovements }
+}
+
+/** A block of ten minutes, as coaches write them. */
+function tenMinutes(): PublishedVersion {
+  const [first, second] = demoMovements
+  if (!first || !second) throw new Error('The demo has no movements.')
+  const stations = [first, second].map(({ slug }) => ({
+    movement: slug,
+    reps: { from: 2, step: 2 },
+  }))
+  const block: Block = {
+    id: 'ten',
+    kind: 'work',
+    title: 'Ten minutes',
+    format: { type: 'rounds', seconds: 600, stations },
+  }
+  return { spec: { spec: 1, title: 'Ten minutes', blocks: [block] }, movements: demoMovements }
+}
+
+/** Rounds done, some taken back, options changed: `count` events of one attempt. */
+function manyEvents(count: number): ClassEvent[] {
+  return Array.from({ length: count }, (_, index): ClassEvent => {
+    const block = `block-${(Math.floor(index / 250) * 2) % BLOCKS}`
+    const round = (index % 250) + 1
+    const stamp = {
+      id: `event-${index}`,
+      device: 'bench',
+      seq: index + 1,
+      classMs: index * 1_000,
+      wallMs: 1_764_000_000_000 + index * 1_000,
+      block,
+    }
+    if (index % 20 === 7)
+      return { ...stamp, type: 'option-chosen', station: 0, option: 'as-planned' }
+    if (index % 20 === 13) return { ...stamp, type: 'round-undone', round, by: 'member' }
+    return { ...stamp, type: 'round-done', round, by: 'member' }
+  })
+}
+
+function engineRows(): Row[] {
+  const longest = longestClass()
+  const problems = check(longest.spec)
+  if (problems.length > 0)
+    throw new Error(`The class to measure is not allowed: ${JSON.stringify(problems)}`)
+  const events = manyEvents(10_000)
+  const ten = tenMinutes()
+  const hours = (realLengthMs(longest) / 3_600_000).toFixed(1)
+  return [
+    {
+      what: `compile the longest class (${BLOCKS} blocks, ${hours} h, ${CUES} cues a block)`,
+      measuredMs: medianMs(() => compile(longest)),
+      barMs: 5,
+    },
+    { what: 'fold 10,000 events', measuredMs: medianMs(() => fold(longest, events)), barMs: 10 },
+    {
+      what: 'forecast a block of ten minutes',
+      measuredMs: medianMs(() => forecast(ten, { tiring: TIRING.expected })),
+      barMs: 1,
+    },
+  ]
+}
+
+const rows = engineRows()
+console.table(
+  rows.map(({ what, measuredMs, barMs }) => ({
+    what,
+    measured: `${measuredMs.toFixed(3)} ms`,
+    bar: `≤ ${barMs} ms`,
+    held: measuredMs <= barMs ? 'yes' : 'NO',
+  })),
+)
+if (rows.some((row) => row.measuredMs > row.barMs)) process.exitCode = 1
