@@ -779,10 +779,10 @@ export const demoMovements: Movement[] = [
         'Standing, hand on the wall',
         ['knee', 'cannot-kneel', 'cannot-get-down', 'balance', 'hip'],
         'Step back with one foot, heel up, tuck the tail.',
-        { figure: 'standing-hip-flexor-stretch', change: 4 },
+        { figure: 'supported-lunge', change: 4 },
       ),
       planned('Half kneeling.'),
-      harder('arm-up', 'Reach up', 'Same-side arm up and over.', { figure: 'hip-flexor-reach' }),
+      harder('arm-up', 'Reach up', 'Same-side arm up and over.', { figure: 'hip-flexor-stretch' }),
     ],
   },
   {

@@ -67,6 +67,7 @@ export const FIGURE_SLUGS = [
   'bird-dog',
   // Mobility
   'cat-cow',
+  'seated-cat-cow',
   'childs-pose',
   'hip-flexor-stretch',
   'hamstring-stretch',

@@ -7,11 +7,16 @@ import {
   otherSide,
   plankOnKnees,
   plankOnToes,
+  SITTING,
+  SITTING_CHAIR,
   STAND,
   STANDING_HIPS,
   UPRIGHT,
   withArms,
 } from './common'
+
+/** Seated, to steady the back as it moves. */
+const HANDS_ON_THIGHS: ArmPose = { hand: [0.2, 0.33], elbowTowards: -90 }
 
 const MAT = { kind: 'mat', from: -0.56, to: 0.56 } as const
 
@@ -170,6 +175,30 @@ export const CORE_MOBILITY = {
     keys: [
       key({ ...ALL_FOURS, body: { at: [0, 0.283], lean: 75, round: 62, nod: 30 } }, 2.2),
       key({ ...ALL_FOURS, body: { at: [0, 0.283], lean: 79, round: -34, nod: -32 } }, 2.2),
+    ],
+    still: 0,
+  },
+  'seated-cat-cow': {
+    description: 'Sitting on a chair, hands on the thighs, the back rounds and then lifts long.',
+    view: 'side',
+    kit: [SITTING_CHAIR],
+    keys: [
+      key(
+        {
+          ...SITTING,
+          body: { ...SITTING.body, lean: 14, round: 46, nod: 26 },
+          arms: HANDS_ON_THIGHS,
+        },
+        2.2,
+      ),
+      key(
+        {
+          ...SITTING,
+          body: { ...SITTING.body, lean: 4, round: -18, nod: -18 },
+          arms: HANDS_ON_THIGHS,
+        },
+        2.2,
+      ),
     ],
     still: 0,
   },
