@@ -54,6 +54,7 @@ async function takeAll(browser) {
 
   await member.setViewportSize(SIZES[1])
   await member.getByRole('link', { name: SHORT_CLASS }).first().click()
+  await member.waitForURL(/\/classes\/.+/)
   await member.getByRole('link', { name: /Get ready|Play again|Go on/ }).click()
   const start = member.getByRole('button', { name: 'Start class' })
   await start.waitFor()
