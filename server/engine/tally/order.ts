@@ -15,27 +15,36 @@ function compare(a: Ordered, b: Ordered): number {
   return a === b ? 0 : compareText(JSON.stringify(a), JSON.stringify(b))
 }
 
-function isInOrder(events: readonly Ordered[]): boolean {
-  return events.every((event, index) => {
-    const before = events[index - 1]
-    return before === undefined || compare(before, event) <= 0
-  })
-}
-
 /**
  * The events in their order, each id once. It does not depend on the order of arrival: of two that
  * share an id the earlier in the order counts. What has no usable `seq` or `id` is left out.
  */
 export function inOrder<T extends Ordered>(events: readonly T[]): T[] {
-  const usable = events.filter(
-    (event) =>
-      typeof event === 'object' &&
-      event !== null &&
-      typeof event.id === 'string' &&
-      Number.isFinite(event.seq),
-  )
+  const usable: T[] = []
   // What a database gives is in order already; sorting it again would be half the work of a fold.
-  if (!isInOrder(usable)) usable.sort(compare)
+  let isSorted = true
+  for (const event of events) {
+    if (!isUsable(event)) continue
+    const before = usable.at(-1)
+    if (before && before.seq >= event.seq && compare(before, event) > 0) isSorted = false
+    usable.push(event)
+  }
+  if (!isSorted) usable.sort(compare)
   const seen = new Set<string>()
-  return usable.filter((event) => !seen.has(event.id) && seen.add(event.id))
+  const once: T[] = []
+  for (const event of usable) {
+    if (seen.has(event.id)) continue
+    seen.add(event.id)
+    once.push(event)
+  }
+  return once
+}
+
+function isUsable(event: Ordered | null | undefined): boolean {
+  return (
+    typeof event === 'object' &&
+    event !== null &&
+    typeof event.id === 'string' &&
+    Number.isFinite(event.seq)
+  )
 }
