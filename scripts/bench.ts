@@ -93,9 +93,9 @@ function tenMinutes(): PublishedVersion {
   return { spec: { spec: 1, title: 'Ten minutes', blocks: [block] }, movements: demoMovements }
 }
 
-/** Rounds done, some taken back, options changed: `count` events of one attempt. */
+/** Rounds done, some taken back, options changed: `count` events of one attempt, as read from storage. */
 function manyEvents(count: number): ClassEvent[] {
-  return Array.from({ length: count }, (_, index): ClassEvent => {
+  const events = Array.from({ length: count }, (_, index): ClassEvent => {
     const block = `block-${(Math.floor(index / 250) * 2) % BLOCKS}`
     const round = (index % 250) + 1
     const stamp = {
@@ -111,6 +111,7 @@ function manyEvents(count: number): ClassEvent[] {
     if (index % 20 === 13) return { ...stamp, type: 'round-undone', round, by: 'member' }
     return { ...stamp, type: 'round-done', round, by: 'member' }
   })
+  return JSON.parse(JSON.stringify(events)) as ClassEvent[]
 }
 
 function engineRows(): Row[] {
