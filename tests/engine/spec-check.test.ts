@@ -304,6 +304,45 @@ describe('a class as a whole', () => {
       ].sort(),
     )
   })
+  it('shows what breaks a rule beside what is wrong in shape, in the same format', () => {
+    const format = {
+      type: 'for-time',
+      rounds: 4,
+      cap: 60,
+      pace: 'quick',
+      stations: [
+        station({ weight: 8, reps: { list: [3, 2, 1], then: 'done' } }),
+        station({ movement: 'No Slug' }),
+      ],
+    }
+    const cues = [
+      cue({ from: 'end', s: 61 }, { colour: 'red' }),
+      cue({ station: 2, round: 5 }, { id: 'd', show: { station: 2 } }),
+    ]
+    expect(paths(spec(block({ format, cues }))).sort()).toEqual(
+      [
+        'blocks[0].format.pace',
+        'blocks[0].format.rounds',
+        'blocks[0].format.stations[0].weight',
+        'blocks[0].format.stations[1].movement',
+        'blocks[0].cues[0].colour',
+        'blocks[0].cues[0].at.s',
+        'blocks[0].cues[1].at.station',
+        'blocks[0].cues[1].at.round',
+        'blocks[0].cues[1].show.station',
+      ].sort(),
+    )
+  })
+  it('guesses no length where a timed station is wrong', () => {
+    const format = {
+      type: 'intervals',
+      rounds: 1,
+      stations: [{ movement: 'a', work: 40, rest: 0, weight: 8 }],
+    }
+    expect(paths(spec(block({ format, cues: [cue({ from: 'start', s: 40 })] })))).toEqual([
+      'blocks[0].format.stations[0].weight',
+    ])
+  })
   it('never throws, whatever it is, and always says something of what is no class', () => {
     fc.assert(
       fc.property(
@@ -335,6 +374,10 @@ describe('a published version', () => {
       expect(read.version?.movements[0]).toMatchObject({ slug: 'squat', ...movement })
       expect(read.version?.movements[0]?.options.map((one) => one.option)).toEqual(['as-planned'])
     }
+  })
+  it('without its spec says so with the paths of a bare one', () => {
+    const read = parseSpecOrVersion({ spec: null, movements: [] })
+    expect(read.problems?.map((one) => one.path)).toEqual([''])
   })
   it('says what is wrong in either part', () => {
     const read = parseSpecOrVersion({

@@ -1,16 +1,17 @@
 /** What is wrong with a class, all of it at once, each with its path and what to do. */
 import type { z } from 'zod'
+import { bodySeconds, countInSeconds } from '../timeline/compile'
 import { movementOptionSchema, movementSchema, type Movement } from './movement'
 import { AS_PLANNED } from './names'
 import { rungCount } from './reps'
 import {
+  anchorSchema,
   blockSchema,
-  cueSchema,
   formatSchema,
+  MOST_STATIONS,
   repsSchema,
   sessionSpecSchema,
-  type Block,
-  type Cue,
+  type Anchor,
   type Format,
   type Reps,
 } from './schema'
@@ -26,7 +27,7 @@ type Key = string | number
 type Path = readonly Key[]
 
 /** The longest class: 3 hours of class time. */
-export const MOST_CLASS_SECONDS = 10_800
+const MOST_CLASS_SECONDS = 10_800
 
 function pathText(path: Path): string {
   let text = ''
@@ -256,69 +257,32 @@ function checkRest(found: Found, format: Format, path: Path): void {
   }
 }
 
-/** Seconds of a block's body. */
-export function bodySeconds(format: Format): number {
-  switch (format.type) {
-    case 'rounds':
-    case 'rest':
-      return format.seconds
-    case 'for-time':
-      return format.cap
-    case 'every':
-      return format.seconds * format.times
-    case 'intervals': {
-      const { stations, rounds, roundRest = 0 } = format
-      const last = stations.at(-1)
-      if (!last) return 0
-      const work = stations.reduce(
-        (sum, one) => sum + (one.sides === 'each' ? 2 * one.work + (one.switch ?? 0) : one.work),
-        0,
-      )
-      const rests = stations.reduce((sum, one) => sum + one.rest, 0)
-      const between = roundRest > 0 ? roundRest : last.rest
-      return rounds * (work + rests - last.rest) + (rounds - 1) * between
-    }
-    case 'holds':
-      return format.stations.reduce(
-        (sum, one, index) =>
-          sum +
-          (one.sides === 'each' ? 2 * one.seconds + (one.switch ?? 5) : one.seconds) +
-          (index < format.stations.length - 1 ? (one.rest ?? 0) : 0),
-        0,
-      )
-  }
-}
-
-/** Where a round or station that a cue waits for cannot come: which part of it, and why. */
+/** Why the round or the station that a cue waits for cannot come: the part of the anchor that says so. */
 function neverComes(
   format: Format,
-  at: Exclude<Cue['at'], { from: string }>,
-): { key: string; why: string } | null {
-  if (format.type === 'rest') {
-    return {
-      key: 'round' in at && !('station' in at) ? 'round' : 'station',
-      why: 'A rest has no rounds or stations. Anchor the cue from its start or end.',
-    }
-  }
+  at: Exclude<Anchor, { from: string }>,
+): { key: 'round' | 'station'; why: string }[] {
   const station = 'station' in at ? at.station : undefined
-  const round = at.round ?? 1
-  if (station !== undefined && station >= format.stations.length) {
-    return {
+  if (format.type === 'rest') {
+    const why = 'A rest has no rounds or stations. Anchor the cue from its start or end.'
+    return [{ key: station === undefined ? 'round' : 'station', why }]
+  }
+  const count = format.stations.length
+  const isThere = station === undefined || station < count
+  const most = mostRounds(format, isThere ? (station ?? 0) : 0)
+  const whys: { key: 'round' | 'station'; why: string }[] = []
+  if (!isThere) {
+    whys.push({
       key: 'station',
-      why: `The block has ${format.stations.length} stations, counted from 0: give ${format.stations.length - 1} at most.`,
-    }
+      why: `The block has ${count} stations, counted from 0: give ${count - 1} at most.`,
+    })
+  } else if (most === 0) {
+    return [{ key: 'station', why: 'This station never comes in so few times.' }]
   }
-  const most = mostRounds(format, station ?? 0)
-  if (round > most) {
-    return {
-      key: at.round === undefined ? 'station' : 'round',
-      why:
-        most === 0
-          ? 'This station never comes in so few times.'
-          : `That round never comes: the last one is ${most}.`,
-    }
+  if ((at.round ?? 1) > most) {
+    whys.push({ key: 'round', why: `That round never comes: the last one is ${most}.` })
   }
-  return null
+  return whys
 }
 
 /** The last round in which a station comes. */
@@ -336,25 +300,22 @@ function mostRounds(format: Exclude<Format, { type: 'rest' }>, station: number):
   }
 }
 
-function checkCues(found: Found, format: Format, cues: unknown, path: Path): void {
+/** `length`: seconds of the body, null where a shape that is wrong leaves it open. */
+function checkCues(
+  found: Found,
+  format: Format,
+  length: number | null,
+  cues: unknown,
+  path: Path,
+): void {
   if (!Array.isArray(cues)) return
-  const length = bodySeconds(format)
-  cues.forEach((raw: unknown, index) => {
-    const parsed = cueSchema.safeParse(raw)
-    if (!parsed.success) return
-    const { at, show } = parsed.data
-    if ('from' in at) {
-      if (at.s > length)
-        found.add(
-          [...path, index, 'at', 's'],
-          `The block is ${length} s long. Give ${length} or less.`,
-        )
-    } else {
-      const never = neverComes(format, at)
-      if (never) found.add([...path, index, 'at', never.key], never.why)
-    }
+  cues.forEach((cue: unknown, index) => {
+    if (!isObject(cue)) return
+    const anchor = anchorSchema.safeParse(cue['at'])
+    if (anchor.success) checkAnchor(found, format, length, anchor.data, [...path, index, 'at'])
+    const station = valueAt(cue, ['show', 'station'])
     const stations = format.type === 'rest' ? 0 : format.stations.length
-    if (show && show.station >= stations) {
+    if (typeof station === 'number' && station >= stations && station < MOST_STATIONS) {
       found.add(
         [...path, index, 'show', 'station'],
         stations === 0
@@ -363,6 +324,22 @@ function checkCues(found: Found, format: Format, cues: unknown, path: Path): voi
       )
     }
   })
+}
+
+function checkAnchor(
+  found: Found,
+  format: Format,
+  length: number | null,
+  at: Anchor,
+  path: Path,
+): void {
+  if ('from' in at) {
+    if (length !== null && at.s > length) {
+      found.add([...path, 's'], `The block is ${length} s long. Give ${length} or less.`)
+    }
+    return
+  }
+  for (const { key, why } of neverComes(format, at)) found.add([...path, key], why)
 }
 
 function checkUnique(found: Found, items: unknown, path: Path, what: string): void {
@@ -377,13 +354,37 @@ function checkUnique(found: Found, items: unknown, path: Path, what: string): vo
   })
 }
 
-function countInSeconds(
-  block: Pick<Block, 'kind' | 'countIn' | 'brief'>,
-  isAfterRest: boolean,
-): number {
-  if (block.countIn !== undefined) return block.countIn
-  if (block.kind !== 'work' && block.kind !== 'finisher') return 0
-  return isAfterRest && block.brief === undefined ? 0 : 5
+/** In place of a station whose shape is wrong, so that the rules can look at those beside it. */
+function standIn(type: unknown, station: unknown): unknown {
+  if (type === 'intervals') return { movement: 'unknown', work: 1, rest: 0 }
+  if (type === 'holds') return { movement: 'unknown', seconds: 1 }
+  const reps = isObject(station) ? repsSchema.safeParse(station['reps']) : undefined
+  return { movement: 'unknown', reps: reps?.success ? reps.data : 1 }
+}
+
+/**
+ * A format as far as it can be read: without what does not belong there, with a stand-in for each
+ * station that is wrong. `isWhole` where nothing had to be changed.
+ */
+function readFormat(raw: unknown): { format: Format; isWhole: boolean } | null {
+  const parsed = formatSchema.safeParse(raw)
+  if (parsed.success) return { format: parsed.data, isWhole: true }
+  if (!isObject(raw)) return null
+  const mended: Record<string, unknown> = { ...raw }
+  const stations: unknown[] = Array.isArray(raw['stations']) ? [...raw['stations']] : []
+  for (const issue of parsed.error.issues) {
+    const [key, index] = issue.path
+    if (key === 'stations' && typeof index === 'number') {
+      stations[index] = standIn(raw['type'], stations[index])
+    } else if (key === undefined && issue.code === 'unrecognized_keys') {
+      for (const unknown of issue.keys) delete mended[unknown]
+    } else if (key !== undefined && key !== 'stations') {
+      delete mended[String(key)]
+    }
+  }
+  if ('stations' in mended) mended['stations'] = stations
+  const again = formatSchema.safeParse(mended)
+  return again.success ? { format: again.data, isWhole: false } : null
 }
 
 function checkRules(found: Found, spec: unknown): void {
@@ -396,17 +397,20 @@ function checkRules(found: Found, spec: unknown): void {
     const path: Path = ['blocks', index]
     checkLadders(found, raw['format'], [...path, 'format'])
     checkUnique(found, raw['cues'], [...path, 'cues'], 'Another cue of this block')
-    const format = formatSchema.safeParse(raw['format'])
-    if (format.success) {
-      checkRungs(found, format.data, [...path, 'format'])
-      checkOptions(found, format.data, [...path, 'format'])
-      checkRest(found, format.data, [...path, 'format'])
-      checkCues(found, format.data, raw['cues'], [...path, 'cues'])
-      seconds += bodySeconds(format.data)
+    const read = readFormat(raw['format'])
+    if (read) {
+      const { format, isWhole } = read
+      const isTimedByStations = format.type === 'intervals' || format.type === 'holds'
+      const length = isWhole || !isTimedByStations ? bodySeconds(format) : null
+      checkRungs(found, format, [...path, 'format'])
+      checkOptions(found, format, [...path, 'format'])
+      checkRest(found, format, [...path, 'format'])
+      checkCues(found, format, length, raw['cues'], [...path, 'cues'])
+      seconds += length ?? 0
     }
     const block = blockSchema.safeParse(raw)
     if (block.success) seconds += countInSeconds(block.data, isAfterRest)
-    isAfterRest = raw['kind'] === 'rest' || (format.success && format.data.type === 'rest')
+    isAfterRest = raw['kind'] === 'rest' || read?.format.type === 'rest'
   })
   if (seconds > MOST_CLASS_SECONDS) {
     const minutes = Math.ceil(seconds / 60)
@@ -444,7 +448,8 @@ export function check(input: unknown): Problem[] {
 export function parseSpecOrVersion(
   input: unknown,
 ): { version: PublishedVersion; problems?: never } | { problems: Problem[]; version?: never } {
-  const isVersion = isObject(input) && isObject(input['spec'])
+  const isVersion =
+    isObject(input) && (isObject(input['spec']) || ('movements' in input && !('blocks' in input)))
   const spec = isVersion ? input['spec'] : input
   const problems = check(spec)
   const movements: Movement[] = []

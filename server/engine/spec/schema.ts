@@ -113,7 +113,9 @@ export const holdStationSchema = z.strictObject({
   options: optionUsesSchema,
 })
 
-const stations = <T extends z.ZodType>(station: T) => list(station, 1, 12, 'stations')
+/** The most that a block can have. */
+export const MOST_STATIONS = 12
+const stations = <T extends z.ZodType>(station: T) => list(station, 1, MOST_STATIONS, 'stations')
 
 export const formatSchema = z.discriminatedUnion('type', [
   z.strictObject({
@@ -152,7 +154,7 @@ export const formatSchema = z.discriminatedUnion('type', [
 export const anchorSchema = z.union([
   z.strictObject({ from: oneOf(['start', 'end']), s: whole(0, 10_800) }),
   z.strictObject({ round: whole(1, 10_000) }),
-  z.strictObject({ station: whole(0, 11), round: whole(1, 10_000).optional() }),
+  z.strictObject({ station: whole(0, MOST_STATIONS - 1), round: whole(1, 10_000).optional() }),
 ])
 
 export const cueSchema = z.strictObject({
@@ -161,7 +163,9 @@ export const cueSchema = z.strictObject({
   spoken: text(1, 200).optional(),
   kind: oneOf(CUE_KINDS),
   say: z.boolean({ error: 'Give true or false.' }).optional(),
-  show: z.strictObject({ station: whole(0, 11), option: slugSchema.optional() }).optional(),
+  show: z
+    .strictObject({ station: whole(0, MOST_STATIONS - 1), option: slugSchema.optional() })
+    .optional(),
   at: anchorSchema,
 })
 

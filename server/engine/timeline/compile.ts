@@ -22,15 +22,14 @@ export function briefMs(block: Block): number {
   return seconds * 1_000
 }
 
-function isRest(block: Block | undefined): boolean {
-  return block !== undefined && (block.kind === 'rest' || block.format.type === 'rest')
-}
-
-/** Seconds of count-in of a block that follows `before`. */
-function countInSeconds(block: Block, before: Block | undefined): number {
+/** Seconds of count-in of a block, by whether it stands straight after a rest block. */
+export function countInSeconds(
+  block: Pick<Block, 'kind' | 'countIn' | 'brief'>,
+  isAfterRest: boolean,
+): number {
   if (block.countIn !== undefined) return block.countIn
   if (block.kind !== 'work' && block.kind !== 'finisher') return 0
-  return isRest(before) && block.brief === undefined ? 0 : DEFAULT_COUNT_IN_SECONDS
+  return isAfterRest && block.brief === undefined ? 0 : DEFAULT_COUNT_IN_SECONDS
 }
 
 type Piece = {
@@ -109,11 +108,17 @@ function bodyOf(format: Format): Piece[] {
   }
 }
 
+/** Seconds of a block's body, its brief and count-in apart. */
+export function bodySeconds(format: Format): number {
+  return bodyOf(format).reduce((sum, piece) => sum + piece.seconds, 0)
+}
+
 /** Segments of a spec, end to end from 0. */
 export function segmentsOf(spec: SessionSpec): Segment[] {
   const segments: Segment[] = []
   let atMs = 0
-  spec.blocks.forEach((block, blockIndex) => {
+  let isAfterRest = false
+  for (const block of spec.blocks) {
     const add = ({ kind, seconds, ...place }: Piece) => {
       if (seconds <= 0 && kind !== 'brief') return
       const startMs = atMs
@@ -121,9 +126,10 @@ export function segmentsOf(spec: SessionSpec): Segment[] {
       segments.push({ kind, block: block.id, startMs, endMs: atMs, ...place })
     }
     if (block.brief !== undefined) add({ kind: 'brief', seconds: 0 })
-    add({ kind: 'count-in', seconds: countInSeconds(block, spec.blocks[blockIndex - 1]) })
+    add({ kind: 'count-in', seconds: countInSeconds(block, isAfterRest) })
     bodyOf(block.format).forEach(add)
-  })
+    isAfterRest = block.kind === 'rest' || block.format.type === 'rest'
+  }
   return segments
 }
 
