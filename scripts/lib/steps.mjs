@@ -112,7 +112,8 @@ export function start(command, args, { isEnd = false, ...options } = {}) {
 /** Runs a program to its end; resolves with its code and output. Never rejects for the code. */
 export function run(command, args, { show = false, input, ...options } = {}) {
   return new Promise((resolve, reject) => {
-    // Throws inside the promise when the command is ending: then it rejects.
+    // Nothing new once the end has begun; the process is over before anybody misses the answer.
+    if (isEnding && !options.isEnd) return
     const child = start(command, args, {
       stdio: [input === undefined ? 'ignore' : 'pipe', 'pipe', 'pipe'],
       ...options,
