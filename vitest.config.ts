@@ -9,20 +9,26 @@ const alias = {
   'server-only': `${root}node_modules/server-only/empty.js`,
 }
 const common = { resolve: { alias } }
+/** A hang, not a busy computer: the slowest unit test takes two seconds on a quiet one. */
+const testTimeout = 60_000
 
 export default defineConfig({
   plugins: [react()],
   ...common,
   test: {
     projects: [
-      { ...common, test: { name: 'engine', include: ['tests/engine/**/*.test.ts'] } },
-      { ...common, test: { name: 'contract', include: ['tests/contract/**/*.test.ts'] } },
+      { ...common, test: { name: 'engine', testTimeout, include: ['tests/engine/**/*.test.ts'] } },
+      {
+        ...common,
+        test: { name: 'contract', testTimeout, include: ['tests/contract/**/*.test.ts'] },
+      },
       {
         ...common,
         plugins: [react()],
         test: {
           name: 'components',
           environment: 'jsdom',
+          testTimeout,
           include: ['tests/components/**/*.test.{ts,tsx}'],
           setupFiles: ['tests/support/dom.ts'],
         },
@@ -33,6 +39,7 @@ export default defineConfig({
         test: {
           name: 'hooks',
           environment: 'jsdom',
+          testTimeout,
           include: ['tests/hooks/**/*.test.{ts,tsx}'],
           setupFiles: ['tests/support/dom.ts'],
         },
@@ -43,7 +50,7 @@ export default defineConfig({
           name: 'server',
           include: ['tests/server/**/*.test.ts'],
           globalSetup: ['tests/support/database-setup.ts'],
-          testTimeout: 20_000,
+          testTimeout,
           hookTimeout: 60_000,
           // Each file has a database of its own, but they share two cores.
           maxWorkers: 2,
