@@ -1,9 +1,8 @@
 /** Marks as they are read and heard. */
 import type { PublishedVersion } from '@/server/engine/spec/version'
+import { callText, nextText } from '@/server/engine/timeline/speech'
 import type { Mark } from '@/server/engine/timeline/types'
 import type { SoundName } from './ports'
-
-const CALL_TEXT: Record<number, string> = { 60: '1 minute', 30: '30 seconds', 10: '10 seconds' }
 
 /** What a call, cue or announcement says; null for a beep and for a cue that is not there. */
 export function markText(version: PublishedVersion, mark: Mark): string | null {
@@ -11,21 +10,15 @@ export function markText(version: PublishedVersion, mark: Mark): string | null {
     case 'beep':
       return null
     case 'call':
-      return mark.half ? 'Half-way' : (CALL_TEXT[mark.left] ?? `${mark.left} seconds`)
+      return callText(mark.left, mark.half === true)
     case 'cue':
       return (
         version.spec.blocks
           .find((block) => block.id === mark.block)
           ?.cues?.find((cue) => cue.id === mark.id)?.text ?? null
       )
-    case 'next': {
-      const block = version.spec.blocks.find((one) => one.id === mark.block)
-      if (!block) return null
-      if (block.format.type === 'rest') return 'Next: rest'
-      const station = mark.station === undefined ? undefined : block.format.stations[mark.station]
-      const movement = version.movements.find((one) => one.slug === station?.movement)
-      return `Next: ${movement?.name ?? block.title}`
-    }
+    case 'next':
+      return nextText(version, mark)
   }
 }
 

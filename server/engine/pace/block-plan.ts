@@ -69,11 +69,12 @@ function endsAfter(reps: Reps): number {
   return rungCount(reps) ?? Infinity
 }
 
-function stationPlan(
+/** One station of a block with reps, with an option in force (a slug; absent: as planned). */
+export function stationPlan(
   version: PublishedVersion,
   station: Station,
-  optionSlug: string | undefined,
-  defaults: PaceDefaults,
+  optionSlug?: string,
+  defaults: PaceDefaults = {},
 ): StationPlan {
   const movement = version.movements.find((one) => one.slug === station.movement)
   const slug = optionSlug ?? AS_PLANNED

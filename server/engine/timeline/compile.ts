@@ -22,6 +22,10 @@ export function briefMs(block: Block): number {
   return seconds * 1_000
 }
 
+export function isRestBlock(block: Block): boolean {
+  return block.kind === 'rest' || block.format.type === 'rest'
+}
+
 /** Seconds of count-in of a block, by whether it stands straight after a rest block. */
 export function countInSeconds(
   block: Pick<Block, 'kind' | 'countIn' | 'brief'>,
@@ -128,7 +132,7 @@ export function segmentsOf(spec: SessionSpec): Segment[] {
     if (block.brief !== undefined) add({ kind: 'brief', seconds: 0 })
     add({ kind: 'count-in', seconds: countInSeconds(block, isAfterRest) })
     bodyOf(block.format).forEach(add)
-    isAfterRest = block.kind === 'rest' || block.format.type === 'rest'
+    isAfterRest = isRestBlock(block)
   }
   return segments
 }
