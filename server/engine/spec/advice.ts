@@ -29,9 +29,9 @@ function isWork(block: Block): boolean {
 }
 
 /**
- * What a coach should be told about `version`, in the order of the class: a spoken cue that finds no
- * time to be said or is cut short; a joint that three blocks in a row load; too little time to get from
- * the floor to standing; work without a warm-up before it. Empty where there is nothing to say. Takes
+ * What a coach should be told about `version`: work without a warm-up before it; a spoken cue that finds
+ * no time to be said or is cut short; a joint that three blocks in a row load; too little time to get
+ * from the floor to standing. In this order, each kind in the order of the class. Empty where there is nothing to say. Takes
  * a class that `check` finds sound; a movement that the version does not hold is passed over.
  */
 export function advise(version: PublishedVersion): Advice[] {

@@ -45,8 +45,6 @@ export const movementSchema = z.object({
   options: z.array(movementOptionSchema).min(1),
 })
 
-export type Pattern = (typeof PATTERNS)[number]
-export type Position = (typeof POSITIONS)[number]
 export type Joint = (typeof JOINTS)[number]
 export type Reason = (typeof REASONS)[number]
 export type Level = (typeof LEVELS)[number]

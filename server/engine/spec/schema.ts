@@ -180,7 +180,7 @@ export const blockSchema = z.strictObject({
   cues: list(cueSchema, 0, 60, 'cues').optional(),
 })
 
-export const kitItemSchema = z.strictObject({
+const kitItemSchema = z.strictObject({
   item: text(1, 60),
   count: whole(1, 100),
   optional: z.boolean({ error: 'Give true or false.' }).optional(),
@@ -208,6 +208,4 @@ export type Reps = z.infer<typeof repsSchema>
 export type Sides = z.infer<typeof sidesSchema>
 export type Tempo = z.infer<typeof tempoSchema>
 export type Cue = z.infer<typeof cueSchema>
-export type CueKind = Cue['kind']
 export type Anchor = z.infer<typeof anchorSchema>
-export type KitItem = z.infer<typeof kitItemSchema>
