@@ -1,8 +1,16 @@
 'use client'
 import clsx from 'clsx'
-import Link from 'next/link'
+import Link, { useLinkStatus } from 'next/link'
 import { usePathname } from 'next/navigation'
 import type { ReactNode } from 'react'
+
+/** A dot of paint while the page behind a link is on its way. */
+function Busy() {
+  const { pending } = useLinkStatus()
+  return pending ? (
+    <span aria-hidden className="ml-1.5 size-2.5 bg-present outline-2 outline-(--text)" />
+  ) : null
+}
 
 /** A way in the header; the one that is open is marked by weight and a line. */
 export function NavLink({ href, children }: { href: string; children: ReactNode }) {
@@ -18,6 +26,7 @@ export function NavLink({ href, children }: { href: string; children: ReactNode 
       )}
     >
       {children}
+      <Busy />
     </Link>
   )
 }

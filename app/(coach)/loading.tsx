@@ -1,1 +1,0 @@
-export { PageLoading as default } from '@/components/site/page-loading'
