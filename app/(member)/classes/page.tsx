@@ -28,7 +28,7 @@ export default async function ClassesPage() {
     <PageFrame viewer={viewer}>
       <div className="page">
         <h1 className="text-6xl font-extrabold sm:text-7xl">Classes</h1>
-        <Suspense fallback={<SkeletonLines lines={8} label="Reading the schedule" />}>
+        <Suspense fallback={<SkeletonLines rows={8} />}>
           <Schedule viewer={viewer} />
         </Suspense>
       </div>

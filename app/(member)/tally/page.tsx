@@ -33,7 +33,7 @@ export default async function TallyPage({
       <div className="page">
         <h1 className="text-6xl font-extrabold sm:text-7xl">My tally</h1>
         {/* Read below the guard, so that a page that is not one's own is still a 404. */}
-        <Suspense fallback={<SkeletonLines lines={6} label="Reading your classes" />}>
+        <Suspense fallback={<SkeletonLines rows={6} />}>
           <Attempts viewer={viewer} before={typeof before === 'string' ? before : null} />
         </Suspense>
       </div>
