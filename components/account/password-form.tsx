@@ -1,6 +1,6 @@
 'use client'
 import { useActionState, useEffect } from 'react'
-import { FormMessage, useFocusFirstError } from '@/components/ui/form-errors'
+import { FormMessage, useFormErrors } from '@/components/ui/form-errors'
 import { KeptForm } from '@/components/ui/kept-form'
 import { Notice } from '@/components/ui/notice'
 import { SubmitButton } from '@/components/ui/submit-button'
@@ -9,14 +9,14 @@ import { changePassword } from '@/server/actions/account'
 
 export function PasswordForm({ email }: { email: string }) {
   const [result, action, isPending] = useActionState(changePassword, null)
-  const form = useFocusFirstError(result)
+  const { form, message } = useFormErrors(result)
   const fields = result && !result.ok ? result.fields : undefined
   useEffect(() => {
     if (result?.ok) form.current?.reset()
   }, [result, form])
   return (
     <KeptForm ref={form} action={action} isPending={isPending} className="max-w-md space-y-5">
-      <FormMessage result={result} />
+      <FormMessage result={result} ref={message} />
       {result?.ok ? (
         <Notice tone="saved">Your password is changed. Other browsers are signed out.</Notice>
       ) : null}

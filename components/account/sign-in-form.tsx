@@ -1,6 +1,6 @@
 'use client'
 import { useActionState } from 'react'
-import { FormMessage, useFocusFirstError } from '@/components/ui/form-errors'
+import { FormMessage, useFormErrors } from '@/components/ui/form-errors'
 import { KeptForm } from '@/components/ui/kept-form'
 import { SubmitButton } from '@/components/ui/submit-button'
 import { TextField } from '@/components/ui/text-field'
@@ -9,11 +9,11 @@ import { signIn } from '@/server/actions/account'
 /** `next`: the page that was asked for, a path of this product. */
 export function SignInForm({ next }: { next: string | null }) {
   const [result, action, isPending] = useActionState(signIn, null)
-  const form = useFocusFirstError(result)
+  const { form, message } = useFormErrors(result)
   const fields = result && !result.ok ? result.fields : undefined
   return (
-    <KeptForm ref={form} action={action} isPending={isPending} className="mt-6 space-y-5">
-      <FormMessage result={result} />
+    <KeptForm ref={form} action={action} isPending={isPending} className="mt-5 space-y-5">
+      <FormMessage result={result} ref={message} />
       {next ? <input type="hidden" name="next" value={next} /> : null}
       <TextField
         name="email"
@@ -33,7 +33,11 @@ export function SignInForm({ next }: { next: string | null }) {
         autoComplete="current-password"
         error={fields?.['password']}
       />
-      <SubmitButton isPending={isPending} pending="Signing in" className="mt-3 w-full text-xl">
+      <SubmitButton
+        isPending={isPending}
+        pending="Signing in"
+        className="mt-3 min-h-16! w-full text-[1.6rem]!"
+      >
         Sign in
       </SubmitButton>
     </KeptForm>

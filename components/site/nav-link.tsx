@@ -1,32 +1,31 @@
 'use client'
 import clsx from 'clsx'
-import Link, { useLinkStatus } from 'next/link'
+import Link from 'next/link'
 import { usePathname } from 'next/navigation'
 import type { ReactNode } from 'react'
 
-/** A dot of paint while the page behind a link is on its way. */
-function Busy() {
-  const { pending } = useLinkStatus()
-  return pending ? (
-    <span aria-hidden className="ml-1.5 size-2.5 bg-present outline-2 outline-(--text)" />
-  ) : null
+interface NavLinkProps {
+  href: string
+  /** Addresses below it that have a link of their own. */
+  not?: readonly string[]
+  children: ReactNode
 }
 
-/** A way in the header; the one that is open is marked by weight and a line. */
-export function NavLink({ href, children }: { href: string; children: ReactNode }) {
+/** A way in the header; the one that is open, or has what is open below it, is marked by weight and a line. */
+export function NavLink({ href, not = [], children }: NavLinkProps) {
   const pathname = usePathname()
-  const isHere = pathname === href
+  const isExactly = pathname === href
+  const isHere = isExactly || (pathname.startsWith(`${href}/`) && !not.includes(pathname))
   return (
     <Link
       href={href}
-      aria-current={isHere ? 'page' : undefined}
+      aria-current={isExactly ? 'page' : isHere ? true : undefined}
       className={clsx(
-        'flex min-h-12 items-center px-2.5 decoration-3 underline-offset-8 hover:underline',
+        'flex min-h-12 items-center px-2 decoration-3 underline-offset-8 hover:underline sm:px-2.5',
         isHere && 'font-bold underline decoration-present',
       )}
     >
       {children}
-      <Busy />
     </Link>
   )
 }

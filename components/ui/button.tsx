@@ -14,8 +14,10 @@ const LOOKS: Record<Look, string> = {
 /** Every action is a verb on a block of paint. */
 export function buttonClass(look: Look, className?: string): string {
   return clsx(
-    'inline-flex min-h-12 cursor-pointer items-center justify-center text-center font-semibold decoration-3 underline-offset-6 disabled:cursor-not-allowed disabled:opacity-60',
-    look === 'text' ? 'px-0' : 'font-display px-6 py-3',
+    'inline-flex min-h-12 cursor-pointer items-center justify-center text-center decoration-3 underline-offset-6 disabled:cursor-not-allowed disabled:opacity-60 aria-disabled:cursor-progress',
+    look === 'text'
+      ? 'px-0 font-semibold'
+      : 'px-6 py-2.5 condensed text-[1.2rem] leading-tight tracking-[0.005em]',
     LOOKS[look],
     className,
   )

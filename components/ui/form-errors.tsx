@@ -1,23 +1,40 @@
 'use client'
-import { useEffect, useRef, type RefObject } from 'react'
+import { useEffect, useRef, type Ref, type RefObject } from 'react'
 import { Notice } from './notice'
 
 /** What came of a form: done, or a sentence for the person. */
 type FormResult = { ok: true } | { ok: false; message: string }
 
-/** After a form came back with errors, the first field that is wrong has the focus. */
-export function useFocusFirstError(result: FormResult | null): RefObject<HTMLFormElement | null> {
+interface FormErrors {
+  form: RefObject<HTMLFormElement | null>
+  message: RefObject<HTMLDivElement | null>
+}
+
+/** After a form came back with errors the first wrong field has the focus, or else the sentence above it. */
+export function useFormErrors(result: FormResult | null): FormErrors {
   const form = useRef<HTMLFormElement>(null)
+  const message = useRef<HTMLDivElement>(null)
   useEffect(() => {
     if (!result || result.ok) return
     const wrong = form.current?.querySelector<HTMLElement>('[aria-invalid="true"]')
-    wrong?.focus()
+    const first = wrong?.matches('fieldset') ? wrong.querySelector('input') : wrong
+    ;(first ?? message.current)?.focus()
   }, [result])
-  return form
+  return { form, message }
 }
 
 /** What was wrong with the form as a whole. */
-export function FormMessage({ result }: { result: FormResult | null }) {
+export function FormMessage({
+  result,
+  ref,
+}: {
+  result: FormResult | null
+  ref?: Ref<HTMLDivElement>
+}) {
   if (!result || result.ok) return null
-  return <Notice tone="error">{result.message}</Notice>
+  return (
+    <Notice tone="error" {...(ref ? { ref } : {})}>
+      {result.message}
+    </Notice>
+  )
 }

@@ -9,12 +9,14 @@ interface KeptFormProps extends Omit<FormHTMLAttributes<HTMLFormElement>, 'actio
 
 /**
  * A form that keeps what was typed when it comes back with errors (React empties a form after its
- * action), and that is on its way once at most.
+ * action), and that is on its way once at most. `action` on the form itself is for whoever sends it
+ * before the page's script runs: it is posted, and nothing typed lands in the address.
  */
 export function KeptForm({ action, isPending, children, ref, ...rest }: KeptFormProps) {
   return (
     <form
       {...(ref ? { ref } : {})}
+      action={action}
       noValidate
       onSubmit={(event) => {
         event.preventDefault()

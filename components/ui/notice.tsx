@@ -1,10 +1,13 @@
 import clsx from 'clsx'
-import type { ReactNode } from 'react'
+import type { ReactNode, Ref } from 'react'
+import { Sign } from './sign'
 
 interface NoticeProps {
   tone: 'info' | 'error' | 'saved'
   children: ReactNode
   className?: string
+  /** To give it the focus: what went wrong is then read, and seen, first. */
+  ref?: Ref<HTMLDivElement>
 }
 
 const TONES = {
@@ -13,13 +16,20 @@ const TONES = {
   saved: { edge: 'border-done', word: 'Done', role: 'status' },
 } as const
 
-/** A sentence set off by a painted edge; the tone has a word as well as a colour. */
-export function Notice({ tone, children, className }: NoticeProps) {
+/** A sentence on a line of paint; the tone has a word and a shape as well as a colour. */
+export function Notice({ tone, children, className, ref }: NoticeProps) {
   const { edge, word, role } = TONES[tone]
   return (
-    <div role={role} className={clsx('border-l-8 py-1 pl-4', edge, className)}>
-      <strong className="sr-only">{word}: </strong>
-      {children}
+    <div
+      {...(ref ? { ref, tabIndex: -1 } : {})}
+      role={role}
+      className={clsx('flex gap-3 border-b-4 bg-raised px-4 py-3 leading-snug', edge, className)}
+    >
+      <Sign tone={tone} />
+      <div className="min-w-0">
+        <strong className="sr-only">{word}: </strong>
+        {children}
+      </div>
     </div>
   )
 }

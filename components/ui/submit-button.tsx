@@ -1,3 +1,4 @@
+import clsx from 'clsx'
 import type { ReactNode } from 'react'
 import { buttonClass } from './button'
 
@@ -10,7 +11,7 @@ interface SubmitButtonProps {
   className?: string
 }
 
-/** Sends its form; says so while it is on its way. */
+/** Sends its form; says so while it is on its way. It keeps the focus, so it is never `disabled`. */
 export function SubmitButton({
   children,
   isPending,
@@ -19,7 +20,11 @@ export function SubmitButton({
   className,
 }: SubmitButtonProps) {
   return (
-    <button type="submit" aria-disabled={isPending} className={buttonClass(look, className)}>
+    <button
+      type="submit"
+      aria-disabled={isPending}
+      className={buttonClass(look, clsx(isPending && 'under-way', className))}
+    >
       {isPending ? pending : children}
     </button>
   )

@@ -2,27 +2,56 @@
 import { TZDate } from '@date-fns/tz'
 import { format } from 'date-fns'
 
+/** How a reader writes dates: '2 December' and 18:46, or 'December 2' and 6:46 PM. */
+export type DateStyle = 'day-first' | 'month-first'
+
+const PATTERNS: Record<DateStyle, { day: string; date: string; time: string }> = {
+  'day-first': { day: 'EEEE d MMMM', date: 'd MMMM yyyy', time: 'HH:mm' },
+  'month-first': { day: 'EEEE, MMMM d', date: 'MMMM d, yyyy', time: 'h:mm a' },
+}
+
+/** Where English dates begin with the month. */
+const MONTH_FIRST = /^en-(us|ph|pr|gu|vi|as|mp)\b/i
+
+/**
+ * The style of whoever sent an Accept-Language header (RFC 9110, 12.5.4). The words are English, so a
+ * language with a region that writes the month first counts only where it is the one preferred.
+ */
+export function dateStyleOf(acceptLanguage: string | null): DateStyle {
+  const [preferred = ''] = (acceptLanguage ?? '').split(',')
+  return MONTH_FIRST.test(preferred.trim()) ? 'month-first' : 'day-first'
+}
+
 /** '18:46' in the zone, from an ISO 8601 instant. */
-export function timeOfDay(instant: string, timeZone: string): string {
-  return format(new TZDate(Date.parse(instant), timeZone), 'HH:mm')
+export function timeOfDay(
+  instant: string,
+  timeZone: string,
+  style: DateStyle = 'day-first',
+): string {
+  return format(new TZDate(Date.parse(instant), timeZone), PATTERNS[style].time)
 }
 
 /** 'Tuesday 2 December', from a local date yyyy-mm-dd. */
-export function dayName(day: string): string {
-  return format(new Date(`${day}T12:00:00`), 'EEEE d MMMM')
+export function dayName(day: string, style: DateStyle = 'day-first'): string {
+  return format(new Date(`${day}T12:00:00`), PATTERNS[style].day)
 }
 
 /** '21 October 2026' in the zone, from an ISO 8601 instant. */
-export function dateOf(instant: string, timeZone: string): string {
-  return format(new TZDate(Date.parse(instant), timeZone), 'd MMMM yyyy')
+export function dateOf(instant: string, timeZone: string, style: DateStyle = 'day-first'): string {
+  return format(new TZDate(Date.parse(instant), timeZone), PATTERNS[style].date)
 }
 
 /** When a class is open: '06:00 to 22:00', or 'all day'. */
-export function windowText(opensAt: string, closesAt: string, timeZone: string): string {
-  const opens = timeOfDay(opensAt, timeZone)
-  const closes = timeOfDay(closesAt, timeZone)
-  if (opens === '00:00' && closes === '00:00') return 'all day'
-  return `${opens} to ${closes === '00:00' ? 'midnight' : closes}`
+export function windowText(
+  opensAt: string,
+  closesAt: string,
+  timeZone: string,
+  style: DateStyle = 'day-first',
+): string {
+  const isMidnight = (instant: string) => timeOfDay(instant, timeZone) === '00:00'
+  if (isMidnight(opensAt) && isMidnight(closesAt)) return 'all day'
+  const closes = isMidnight(closesAt) ? 'midnight' : timeOfDay(closesAt, timeZone, style)
+  return `${timeOfDay(opensAt, timeZone, style)} to ${closes}`
 }
 
 /** '33 minutes', '4 minutes', '50 seconds'. Milliseconds. */

@@ -1,9 +1,9 @@
 import type { Metadata } from 'next'
 import { KitForm } from '@/components/account/kit-form'
 import { PasswordForm } from '@/components/account/password-form'
-import { SignOutButton } from '@/components/account/sign-out-button'
 import { Holds } from '@/components/attempt/holds'
 import { PageFrame } from '@/components/site/page-frame'
+import { SignOutButton, SignOutEverywhereButton } from '@/components/site/sign-out-button'
 import { Button, LinkButton } from '@/components/ui/button'
 import { switchGym } from '@/server/actions/account'
 import { requireViewer } from '@/server/auth/viewer'
@@ -67,7 +67,7 @@ export default async function AccountPage() {
             </p>
             <div className="flex flex-wrap gap-4">
               <SignOutButton />
-              <SignOutButton everywhere />
+              <SignOutEverywhereButton />
             </div>
           </section>
           {viewer.gyms.length > 1 ? (

@@ -92,8 +92,8 @@ export default async function SignInPage({
               <div>
                 <h2 className="text-xl">New here?</h2>
                 <p className="mt-1">
-                  Your gym sets up your account. Ask your coach for it; they give you your e-mail
-                  and a first password, which you can change after signing in.
+                  Your gym sets up your account. Ask your coach for it; they give you a first
+                  password, which you can change after signing in.
                 </p>
               </div>
               <div>
