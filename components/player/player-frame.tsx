@@ -1,6 +1,7 @@
 'use client'
 import type { CSSProperties, ReactNode } from 'react'
 import { usePlayer } from './player-context'
+import { useDropPointerFocus } from './use-drop-pointer-focus'
 import type { Ground } from './scene'
 import styles from './floor-plan.module.css'
 
@@ -17,6 +18,7 @@ export function PlayerFrame({
   idle: boolean
   children: ReactNode
 }) {
+  useDropPointerFocus()
   const inches = usePlayer((state) => state.preferences.screenDiagonalInches)
   return (
     <main
