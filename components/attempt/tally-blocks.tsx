@@ -3,7 +3,7 @@ import { rungWindow } from '@/components/lane/rung-window'
 import { blockPlan, roundReps } from '@/server/engine/pace/block-plan'
 import { AS_PLANNED } from '@/server/engine/spec/names'
 import type { PublishedVersion } from '@/server/engine/spec/version'
-import { clockText, scoreText } from '@/server/engine/tally/score'
+import { clockText, hasResult, scoreText } from '@/server/engine/tally/score'
 import type { AttemptTally, BlockTally } from '@/server/engine/tally/types'
 
 /** What was done in every block: rungs, score, options used, rest. */
@@ -42,12 +42,16 @@ function BlockSummary({ version, tally }: { version: PublishedVersion; tally: Bl
       <div className="flex items-baseline justify-between gap-4">
         <h3 className="text-xl">{block.title}</h3>
         <p className="figures text-3xl whitespace-nowrap">
-          {tally.skipped ? '' : scoreText(tally)}
+          {tally.skipped && !hasResult(tally) ? '' : scoreText(tally)}
         </p>
       </div>
       {tally.skipped ? (
-        <p>Skipped{tally.skipped.reason ? `: ${tally.skipped.reason}` : ''}</p>
-      ) : (
+        <p>
+          {hasResult(tally) ? 'The rest was skipped' : 'Skipped'}
+          {tally.skipped.reason ? `: ${tally.skipped.reason}` : ''}
+        </p>
+      ) : null}
+      {tally.skipped && !hasResult(tally) ? null : (
         <>
           {plan && tally.rounds > 0 ? (
             <Rungs

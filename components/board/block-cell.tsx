@@ -2,7 +2,7 @@ import { RungCell, type CellRung } from '@/components/lane/rung-cell'
 import type { BoardDto, BoardRow } from '@/server/contract/board'
 import { blockPlan, roundReps } from '@/server/engine/pace/block-plan'
 import type { Block } from '@/server/engine/spec/schema'
-import { scoreText } from '@/server/engine/tally/score'
+import { hasResult, scoreText } from '@/server/engine/tally/score'
 import type { BlockTally } from '@/server/engine/tally/types'
 import type { BlockShape } from './block-shapes'
 import { takenInBlock } from './options-taken'
@@ -44,7 +44,7 @@ export function BlockCell({ dto, row, block, shape }: BlockCellProps) {
     )
   }
   if (tally.format === 'rest') return <RestCell tally={tally} />
-  if (tally.skipped) {
+  if (tally.skipped && !hasResult(tally)) {
     return (
       <p className="text-sm leading-tight">
         <span className="font-semibold">Skipped</span>
@@ -77,6 +77,14 @@ export function BlockCell({ dto, row, block, shape }: BlockCellProps) {
       <span className="flex shrink-0 items-center gap-1 whitespace-nowrap">
         <span className="font-display text-[15px] font-semibold tabular-nums">{score}</span>
         {begun ? <OptionMarks dto={dto} tally={tally} /> : null}
+        {tally.skipped ? (
+          <abbr
+            title={`The rest was skipped${tally.skipped.reason ? `: ${tally.skipped.reason}` : ''}`}
+            className="text-sm text-text-quiet no-underline"
+          >
+            skipped
+          </abbr>
+        ) : null}
         {tally.countedAfterwards ? (
           <abbr
             title="Counted after class, not pressed in it"

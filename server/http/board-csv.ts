@@ -12,7 +12,7 @@ import {
 import { HURT_PLACE_TEXT } from '@/server/engine/fit/hurt'
 import { STOP_SIGN_TEXT } from '@/server/engine/fit/stop-signs'
 import { AS_PLANNED } from '@/server/engine/spec/names'
-import { scoreText } from '@/server/engine/tally/score'
+import { hasResult, scoreText } from '@/server/engine/tally/score'
 
 /** Rows and order as the view has them. `nowMs`: milliseconds since 1970. Cells that a spreadsheet would run are quoted with an apostrophe. */
 export function boardCsv(board: BoardDto, view: BoardView, nowMs: number): string {
@@ -79,7 +79,11 @@ function blockCells(board: BoardDto, row: BoardRow, blockId: string): string[] {
     tally.skipped ? `skipped${tally.skipped.reason ? `: ${tally.skipped.reason}` : ''}` : '',
     tally.countedAfterwards ? 'counted after class' : '',
   ].filter(Boolean)
-  return [tally.skipped ? '' : scoreText(tally), options.join('; '), remarks.join('; ')]
+  return [
+    tally.skipped && !hasResult(tally) ? '' : scoreText(tally),
+    options.join('; '),
+    remarks.join('; '),
+  ]
 }
 
 /** 'slipway-2026-12-01.csv'. */

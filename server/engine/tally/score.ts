@@ -32,6 +32,11 @@ export function scoreText(tally: BlockTally): string {
   return tally.over && tally.skipped === null ? `cap, ${rounds}` : rounds
 }
 
+/** True where something of a block was done; what was done before it was skipped stays. */
+export function hasResult(tally: BlockTally): boolean {
+  return tally.totalReps > 0 || (tally.pieces?.done ?? 0) > 0 || (tally.pieces?.partDone ?? 0) > 0
+}
+
 /**
  * The score of every `rounds` and `for-time` block in the order of the spec, from the events of one
  * attempt. Every option is reckoned as planned.
