@@ -10,6 +10,8 @@ import { listenToBoard, type LiveState } from './live-channel'
 /** The floor under the stream: what it may have missed is seen after this long all the same. */
 const POLL_WHILE_LIVE_MS = 30_000
 const POLL_WHILE_LOST_MS = 2_000
+/** A full class changes many times a second; one reading a second shows each change within two. */
+const LEAST_BETWEEN_MS = 1_000
 
 export interface LiveBoard {
   board: BoardDto
@@ -42,19 +44,29 @@ export function useBoard(initial: BoardDto): LiveBoard {
     retry: false,
   })
 
-  useEffect(
-    () =>
-      listenToBoard(scheduledClassId, {
-        onState: setLive,
-        onChange: ({ revision }) => {
-          const shown = client.getQueryData<BoardDto>(['board', scheduledClassId])
-          if (!shown || shown.revision < revision) {
+  useEffect(() => {
+    let wanted: ReturnType<typeof setTimeout> | undefined
+    let readMs = 0
+    const end = listenToBoard(scheduledClassId, {
+      onState: setLive,
+      onChange: ({ revision }) => {
+        const shown = client.getQueryData<BoardDto>(['board', scheduledClassId])
+        if (shown && shown.revision >= revision) return
+        wanted ??= setTimeout(
+          () => {
+            wanted = undefined
             void client.invalidateQueries({ queryKey: ['board', scheduledClassId] })
-          }
-        },
-      }),
-    [client, scheduledClassId],
-  )
+          },
+          Math.max(0, readMs + LEAST_BETWEEN_MS - Date.now()),
+        )
+        readMs = Math.max(readMs, Date.now())
+      },
+    })
+    return () => {
+      clearTimeout(wanted)
+      end()
+    }
+  }, [client, scheduledClassId])
 
   return {
     board: query.data,

@@ -1,7 +1,7 @@
 'use client'
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query'
 import { usePathname, useSearchParams } from 'next/navigation'
-import { useState, useTransition } from 'react'
+import { useDeferredValue, useState, useTransition } from 'react'
 import type { BoardDto } from '@/server/contract/board'
 import {
   arrangeRows,
@@ -36,7 +36,9 @@ function LiveBoard({ initial }: { initial: BoardDto }) {
   const nowMs = useNow(Date.parse(initial.readAt), 5_000)
   const [view, setView] = useBoardView()
   const phone = useMedia('(max-width: 50rem)')
-  const rows = arrangeRows(board, view, nowMs)
+  // What is typed and chosen shows at once; five hundred rows may follow a moment later.
+  const shownView = useDeferredValue(view)
+  const rows = arrangeRows(board, shownView, nowMs)
   const counts = countStates(board, nowMs)
   const query = boardViewQuery(view)
   const onSort = (sort: BoardView['sort']) =>
@@ -79,9 +81,9 @@ function LiveBoard({ initial }: { initial: BoardDto }) {
           </button>
         </div>
       ) : phone ? (
-        <BoardList dto={board} rows={rows} view={view} nowMs={nowMs} />
+        <BoardList dto={board} rows={rows} view={shownView} nowMs={nowMs} />
       ) : (
-        <BoardTable dto={board} rows={rows} view={view} nowMs={nowMs} onSort={onSort} />
+        <BoardTable dto={board} rows={rows} view={shownView} nowMs={nowMs} onSort={onSort} />
       )}
       <p className="mt-4 text-sm text-text-quiet">
         A rung is a logged round, as long as its reps, at its moment. Tinted: the forecast. Yellow:

@@ -12,12 +12,16 @@ function registry(): Registry {
   return kept.floorsideStreams
 }
 
-/** Keeps `close` to be called at the end; returns the way to forget it. Called at once where the end has come. */
+/** Keeps `close` to be called at the end; returns the way to forget it. */
 export function registerStream(close: () => void): () => void {
-  const { streams, closing } = registry()
-  if (closing) close()
-  else streams.add(close)
+  const { streams } = registry()
+  streams.add(close)
   return () => streams.delete(close)
+}
+
+/** The process has been told to end: a connection that is still open must not begin another stream. */
+export function isClosing(): boolean {
+  return registry().closing
 }
 
 export function closeAllStreams(): void {
@@ -25,8 +29,4 @@ export function closeAllStreams(): void {
   now.closing = true
   for (const close of now.streams) close()
   now.streams.clear()
-}
-
-export function openStreams(): number {
-  return registry().streams.size
 }

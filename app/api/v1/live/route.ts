@@ -11,7 +11,7 @@ import { listenableBoards } from '@/server/data/boards'
 import { defaultDb } from '@/server/data/db'
 import { handler } from '@/server/http/handler'
 import { boardFeed } from '@/server/http/board-feed'
-import { registerStream } from '@/server/live/registry'
+import { isClosing, registerStream } from '@/server/live/registry'
 
 export const dynamic = 'force-dynamic'
 
@@ -19,6 +19,8 @@ const HEARTBEAT_MS = 15_000
 const MOST_BOARDS = 20
 
 export const GET = handler<Record<string, never>>(async (request, _params, { viewer }) => {
+  if (isClosing())
+    throw new AppError('unavailable', 'The server is starting anew. Trying again by itself.')
   const wanted = (new URL(request.url).searchParams.get('boards') ?? '').split(',').filter(Boolean)
   if (wanted.length === 0 || wanted.length > MOST_BOARDS) {
     throw new AppError('bad-input', `Name 1 to ${MOST_BOARDS} boards.`)
