@@ -1,49 +1,90 @@
+import { StillFigure } from '@/components/figure/still-figure'
 import { workNumber, formatText, stationNames, stationText } from '@/server/contract/block-text'
+import type { AnyStation, Block } from '@/server/engine/spec/schema'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 
 /** Every block of a class with its stations, and the easier and harder ways of each. */
 export function BlockList({ version }: { version: PublishedVersion }) {
   return (
-    <ol className="grid gap-x-10 gap-y-7 md:grid-cols-2">
-      {version.spec.blocks
-        .filter((block) => block.format.type !== 'rest')
-        .map((block) => {
-          const number = workNumber(version.spec.blocks, block)
-          return (
-            <li key={block.id} className="border-t-4 border-line pt-2">
-              <h3 className="flex items-baseline gap-3 text-xl">
-                {number !== null ? <span className="figures text-3xl">{number}</span> : null}
-                {block.title}
-              </h3>
-              <p className="text-text-quiet">{formatText(block)}</p>
-              <ul className="mt-2 space-y-2">
-                {block.format.type === 'rest'
-                  ? null
-                  : block.format.stations.map((station, index) => {
-                      const { name, easier, harder } = stationNames(version, station)
-                      return (
-                        <li key={index}>
-                          <p>
-                            <strong>{name}</strong> · {stationText(station)}
-                          </p>
-                          {easier.length + harder.length > 0 ? (
-                            <p className="text-base text-text-quiet">
-                              {easier.length > 0
-                                ? `Easier: ${easier.join(', ').toLowerCase()}`
-                                : ''}
-                              {easier.length > 0 && harder.length > 0 ? '. ' : ''}
-                              {harder.length > 0
-                                ? `Harder: ${harder.join(', ').toLowerCase()}`
-                                : ''}
-                            </p>
-                          ) : null}
-                        </li>
-                      )
-                    })}
-              </ul>
-            </li>
-          )
-        })}
+    <ol>
+      {version.spec.blocks.map((block) =>
+        block.format.type === 'rest' ? null : (
+          <BlockRow
+            key={block.id}
+            version={version}
+            block={block}
+            stations={block.format.stations}
+          />
+        ),
+      )}
     </ol>
+  )
+}
+
+interface BlockRowProps {
+  version: PublishedVersion
+  block: Block
+  stations: readonly AnyStation[]
+}
+
+function BlockRow({ version, block, stations }: BlockRowProps) {
+  const number = workNumber(version.spec.blocks, block)
+  return (
+    <li className="grid gap-x-8 gap-y-4 border-t-4 border-line pt-3 pb-7 sm:grid-cols-[11rem_1fr]">
+      <div>
+        <h3 className="flex items-baseline gap-3 text-2xl">
+          {number === null ? null : <span className="figures text-3xl">{number}</span>}
+          {block.title}
+        </h3>
+        <p className="mt-1 text-text-quiet">{formatText(block)}</p>
+      </div>
+      <ul className="space-y-4">
+        {stations.map((station, index) => (
+          <Station key={index} version={version} station={station} />
+        ))}
+      </ul>
+    </li>
+  )
+}
+
+function Station({ version, station }: { version: PublishedVersion; station: AnyStation }) {
+  const { name, easier, harder } = stationNames(version, station)
+  const figure =
+    version.movements.find((one) => one.slug === station.movement)?.figure ?? station.movement
+  return (
+    <li className="grid grid-cols-[5.5rem_1fr] gap-x-4">
+      <div className="flex h-17 items-end justify-center border-b-4 border-fill">
+        <StillFigure figure={figure} frame="stature" label="" className="-mt-4 h-21 max-w-full" />
+      </div>
+      <div className="grid content-start gap-x-6 gap-y-1.5 xl:grid-cols-[12rem_1fr]">
+        <p className="leading-snug">
+          <strong className="block">{name}</strong>
+          <span className="text-text-quiet">{stationText(station)}</span>
+        </p>
+        <dl className="grid gap-x-6 gap-y-1 lg:grid-cols-[6fr_5fr]">
+          <Ways key="easier" digit="1" word="Easier" names={easier} />
+          <Ways key="harder" digit="3" word="Harder" names={harder} />
+        </dl>
+      </div>
+    </li>
+  )
+}
+
+/** The digit is the key that chooses it in class. */
+function Ways({ digit, word, names }: { digit: string; word: string; names: readonly string[] }) {
+  if (names.length === 0) return null
+  return (
+    <div className="flex gap-2.5 leading-snug">
+      <dt className="shrink-0">
+        <span
+          aria-hidden
+          className="flex size-6 items-center justify-center border-2 border-line-lesser text-[0.85rem] font-bold text-text-quiet"
+        >
+          {digit}
+        </span>
+        <span className="sr-only">{word}</span>
+      </dt>
+      <dd>{names.join(', or ').toLowerCase()}</dd>
+    </div>
   )
 }

@@ -1,8 +1,9 @@
 import Link from 'next/link'
 import type { ReactNode } from 'react'
 import { buttonClass } from '@/components/ui/button'
-import type { HealthStanding, ScheduledClassSummary } from '@/server/contract/classes'
-import { dateOf, dayName, lengthText, windowText } from '@/server/contract/format'
+import { PageTitle } from '@/components/ui/heading'
+import type { ScheduledClassSummary } from '@/server/contract/classes'
+import { dayName, lengthText, windowText, type DateStyle } from '@/server/contract/format'
 import { paths } from '@/server/contract/paths'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import { BlockList } from './block-list'
@@ -12,13 +13,15 @@ interface ClassOverviewProps {
   scheduledClass: ScheduledClassSummary
   version: PublishedVersion
   timeZone: string
+  dateStyle: DateStyle
   now: Date
   /** 'Today' on the day's own page, else the date. */
   when: string | null
-  kit: Record<string, number>
-  health: HealthStanding | null
   /** False for somebody who only reads it (a coach who does not train). */
   canPlay: boolean
+  kit: ReactNode
+  /** How the member's own health answers stand; null for somebody who only reads. */
+  health: ReactNode
 }
 
 /** One class on a page: what it is, when, how it runs, what it needs, and the way in. */
@@ -26,23 +29,23 @@ export function ClassOverview({
   scheduledClass,
   version,
   timeZone,
+  dateStyle,
   now,
   when,
+  canPlay,
   kit,
   health,
-  canPlay,
 }: ClassOverviewProps) {
-  const { title, focus, coachName, realLengthMs } = scheduledClass
+  const { title, focus, coachName, realLengthMs, opensAt, closesAt, day } = scheduledClass
   return (
     <article>
       <div className="flex flex-wrap items-start justify-between gap-x-12 gap-y-5 page">
-        <h1 className="text-6xl leading-[0.95] font-extrabold text-balance sm:text-7xl lg:text-8xl">
-          {title}
-        </h1>
-        <div className="pt-1">
+        <div className="min-w-0">
+          <PageTitle>{title}</PageTitle>
+        </div>
+        <div className="lg:pt-2">
           <p className="font-display text-2xl font-bold">
-            {when ?? dayName(scheduledClass.day)},{' '}
-            {windowText(scheduledClass.opensAt, scheduledClass.closesAt, timeZone)}
+            {when ?? dayName(day, dateStyle)}, {windowText(opensAt, closesAt, timeZone, dateStyle)}
           </p>
           <p className="mt-1">
             {lengthText(realLengthMs)}
@@ -50,69 +53,71 @@ export function ClassOverview({
           </p>
           {focus ? <p className="text-text-quiet">{focus}</p> : null}
         </div>
-        <div className="w-full sm:w-72">
+        <div className="w-full sm:w-80 lg:pt-2">
           {canPlay ? <WayIn scheduledClass={scheduledClass} now={now} /> : null}
         </div>
       </div>
-      <div className="mt-6">
+      <div className="mt-4 sm:mt-6">
         <ClassPicture version={version} />
       </div>
-      <div className="mt-10 grid gap-x-12 gap-y-10 page lg:grid-cols-[1fr_20rem]">
-        <section aria-label="Blocks">
-          <BlockList version={version} />
-        </section>
-        <div className="space-y-9 border-line lg:border-l-4 lg:pl-8">
-          <Section title="Kit">
-            <KitLines version={version} kit={kit} />
-          </Section>
-          {health && canPlay ? (
-            <Section title="Health questions">
-              <HealthLines
-                health={health}
-                timeZone={timeZone}
-                from={paths.classPage(scheduledClass.scheduledClassId)}
-              />
-            </Section>
+      <div className="mt-8 grid gap-x-10 gap-y-9 page lg:grid-cols-[1fr_17.5rem]">
+        <div className="space-y-8 border-line lg:col-start-2 lg:row-start-1 lg:border-l-4 lg:pl-7">
+          <section>
+            <h2 className="text-2xl">Kit</h2>
+            {kit}
+          </section>
+          {health ? (
+            <section>
+              <h2 className="mb-3 text-2xl">Health questions</h2>
+              {health}
+            </section>
           ) : null}
         </div>
+        <section aria-label="Blocks" className="min-w-0">
+          <BlockList version={version} />
+        </section>
       </div>
     </article>
   )
 }
 
-function Section({ title, children }: { title: string; children: ReactNode }) {
-  return (
-    <section>
-      <h2 className="mb-2 text-2xl">{title}</h2>
-      {children}
-    </section>
-  )
-}
-
 function WayIn({ scheduledClass, now }: { scheduledClass: ScheduledClassSummary; now: Date }) {
   const { scheduledClassId, myAttempts, opensAt, closesAt } = scheduledClass
-  const latest = myAttempts[0]
+  const [latest] = myAttempts
   const isOpen = latest && (latest.state === 'in-class' || latest.state === 'paused')
-  const isDone = myAttempts.find((attempt) => attempt.state === 'finished')
+  const done = myAttempts.filter((attempt) => attempt.state === 'finished')
+  const [latestDone] = done
   const isEarly = now.getTime() < Date.parse(opensAt)
   const isLate = now.getTime() > Date.parse(closesAt)
   return (
     <>
       <Link
         href={paths.play(scheduledClassId)}
-        className={buttonClass(isDone && !isOpen ? 'outlined' : 'filled', 'w-full text-2xl')}
+        className={buttonClass(
+          latestDone && !isOpen ? 'outlined' : 'filled',
+          'min-h-18! w-full text-[2rem]!',
+        )}
       >
-        {isOpen ? 'Go on with class' : isDone ? 'Play again' : 'Get ready'}
+        {isOpen ? 'Go on with class' : latestDone ? 'Play again' : 'Get ready'}
       </Link>
-      {isDone ? (
-        <p className="mt-3">
-          Done today.{' '}
-          <Link className={buttonClass('text')} href={paths.attemptTally(isDone.attemptId)}>
+      {latestDone ? (
+        <p className="mt-2">
+          <span className="font-semibold text-done">
+            {done.length > 1 ? `You have done this ${done.length} times.` : 'You have done this.'}
+          </span>{' '}
+          <Link className={buttonClass('text')} href={paths.attemptTally(latestDone.attemptId)}>
             See my tally
           </Link>
         </p>
+      ) : isOpen ? (
+        <p className="mt-2">You are in the middle of it. It goes on where you left off.</p>
       ) : latest?.state === 'stopped' ? (
-        <p className="mt-3">You stopped this one. Your coach sees it.</p>
+        <p className="mt-2">
+          You stopped this one. Your coach sees it.{' '}
+          <Link className={buttonClass('text')} href={paths.attemptTally(latest.attemptId)}>
+            See my tally
+          </Link>
+        </p>
       ) : null}
       {isLate ? (
         <p className="mt-2 text-text-quiet">
@@ -125,103 +130,4 @@ function WayIn({ scheduledClass, now }: { scheduledClass: ScheduledClassSummary;
       ) : null}
     </>
   )
-}
-
-function KitLines({ version, kit }: { version: PublishedVersion; kit: Record<string, number> }) {
-  const items = version.spec.kit ?? []
-  if (items.length === 0) return <p>Nothing but the floor.</p>
-  return (
-    <ul className="space-y-1">
-      {items.map((item) => {
-        const have = kit[item.item] ?? 0
-        return (
-          <li key={item.item}>
-            <strong>
-              {item.count > 1 ? `${item.count} × ` : ''}
-              {item.item}
-            </strong>
-            <span className="text-text-quiet">
-              {' '}
-              ·{' '}
-              {have >= item.count
-                ? 'yours'
-                : item.optional
-                  ? 'if you have one'
-                  : have > 0
-                    ? `you have ${have}`
-                    : 'not in your kit'}
-            </span>
-          </li>
-        )
-      })}
-      <li>
-        <Link className={buttonClass('text')} href={`${paths.account()}#kit`}>
-          Change my kit
-        </Link>
-      </li>
-    </ul>
-  )
-}
-
-function HealthLines({
-  health,
-  timeZone,
-  from,
-}: {
-  health: HealthStanding
-  timeZone: string
-  from: string
-}) {
-  const link = (text: string) => (
-    <Link
-      className={buttonClass('text')}
-      href={`${paths.health()}?next=${encodeURIComponent(from)}`}
-    >
-      {text}
-    </Link>
-  )
-  if (health.consentMissing)
-    return (
-      <p>
-        Your guardian’s consent is not on record yet. Ask your gym; until then you can read classes.
-      </p>
-    )
-  switch (health.standing) {
-    case 'open':
-      return (
-        <>
-          <p>
-            {health.answeredAt
-              ? 'Your answers are out of date.'
-              : 'You have not answered them yet.'}{' '}
-            It takes a minute, before your first class.
-          </p>
-          {link('Answer them')}
-        </>
-      )
-    case 'blocked':
-      return (
-        <>
-          <p>You can read classes. To play, state that a licensed professional has cleared you.</p>
-          {link('My answers')}
-        </>
-      )
-    case 'clearance':
-      return (
-        <>
-          <p>State that you have been cleared, or choose limits. Then you can play.</p>
-          {link('My answers')}
-        </>
-      )
-    case 'clear':
-      return (
-        <>
-          <p>
-            You answered on {health.answeredAt ? dateOf(health.answeredAt, timeZone) : ''}.
-            {health.goodUntil ? ` Good until ${dateOf(health.goodUntil, timeZone)}.` : ''}
-          </p>
-          {link('Something has changed')}
-        </>
-      )
-  }
 }

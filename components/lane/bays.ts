@@ -24,7 +24,7 @@ export interface Bay {
   state: BayState
 }
 
-const PAINT: Record<BlockKind, BayPaint> = {
+export const PAINT: Record<BlockKind, BayPaint> = {
   work: 'filled',
   finisher: 'hatched',
   'warm-up': 'low',

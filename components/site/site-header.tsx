@@ -26,18 +26,18 @@ export function SiteHeader({ viewer }: { viewer: Viewer }) {
   ]
   const others = viewer.gyms.filter((gym) => gym.gymId !== viewer.gymId)
   return (
-    <header className="flex flex-wrap items-center gap-x-6 page pt-2 sm:pt-4">
+    <header className="flex flex-wrap items-center gap-x-4 page sm:gap-x-6 pt-2 sm:pt-4">
       <a
         href="#content"
         className="sr-only bg-button px-4 py-2 text-on-button focus:not-sr-only focus:absolute focus:top-2 focus:left-2 focus:z-40"
       >
         To the content
       </a>
-      <p className="mr-auto flex min-h-12 min-w-0 flex-1 items-center gap-4">
+      <p className="mr-auto flex min-h-12 min-w-0 flex-1 items-center gap-3 sm:gap-4">
         <Link href={paths.home()} className="font-display text-xl font-extrabold wide">
           Floorside
         </Link>
-        <span className="truncate text-text-quiet">{viewer.gym.name}</span>
+        <span className="truncate text-[0.9rem] text-text-quiet sm:text-base">{viewer.gym.name}</span>
       </p>
       <nav
         aria-label="Main"

@@ -1,4 +1,5 @@
 /** Classes as members and coaches see them in lists and before class. Instants are ISO 8601 text. */
+import type { BlockKind } from '../engine/spec/schema'
 import type { PublishedVersion } from '../engine/spec/version'
 import type { AttemptState, AttemptTally } from '../engine/tally/types'
 import type { HealthAnswers } from '../engine/fit/screening'
@@ -17,6 +18,8 @@ export interface ScheduledClassSummary {
   /** Class time plus briefs. */
   realLengthMs: number
   classLengthMs: number
+  /** Its blocks in order, for a small picture to scale; together as long as the class. */
+  blocks: { kind: BlockKind; lengthMs: number }[]
   /** My own attempts, latest first; empty for a coach's list. */
   myAttempts: { attemptId: string; state: AttemptState; startedAt: string | null }[]
 }

@@ -5,9 +5,24 @@ import { format } from 'date-fns'
 /** How a reader writes dates: '2 December' and 18:46, or 'December 2' and 6:46 PM. */
 export type DateStyle = 'day-first' | 'month-first'
 
-const PATTERNS: Record<DateStyle, { day: string; date: string; time: string }> = {
-  'day-first': { day: 'EEEE d MMMM', date: 'd MMMM yyyy', time: 'HH:mm' },
-  'month-first': { day: 'EEEE, MMMM d', date: 'MMMM d, yyyy', time: 'h:mm a' },
+const PATTERNS: Record<
+  DateStyle,
+  Record<'day' | 'shortDay' | 'dayMonth' | 'date' | 'time', string>
+> = {
+  'day-first': {
+    day: 'EEEE d MMMM',
+    shortDay: 'EEE d MMM',
+    dayMonth: 'd MMMM',
+    date: 'd MMMM yyyy',
+    time: 'HH:mm',
+  },
+  'month-first': {
+    day: 'EEEE, MMMM d',
+    shortDay: 'EEE, MMM d',
+    dayMonth: 'MMMM d',
+    date: 'MMMM d, yyyy',
+    time: 'h:mm a',
+  },
 }
 
 /** Where English dates begin with the month. */
@@ -34,6 +49,16 @@ export function timeOfDay(
 /** 'Tuesday 2 December', from a local date yyyy-mm-dd. */
 export function dayName(day: string, style: DateStyle = 'day-first'): string {
   return format(new Date(`${day}T12:00:00`), PATTERNS[style].day)
+}
+
+/** 'Tue 2 Dec', from a local date yyyy-mm-dd. */
+export function shortDay(day: string, style: DateStyle = 'day-first'): string {
+  return format(new Date(`${day}T12:00:00`), PATTERNS[style].shortDay)
+}
+
+/** '2 December', from a local date yyyy-mm-dd. */
+export function dayMonth(day: string, style: DateStyle = 'day-first'): string {
+  return format(new Date(`${day}T12:00:00`), PATTERNS[style].dayMonth)
 }
 
 /** '21 October 2026' in the zone, from an ISO 8601 instant. */

@@ -28,6 +28,7 @@ import { AppError } from '@/server/contract/errors'
 import type { Viewer } from '@/server/contract/viewer'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import { compile, realLengthMs } from '@/server/engine/timeline/compile'
+import type { Timeline } from '@/server/engine/timeline/types'
 import { timed } from './deadline'
 
 /** The gym's local date at an instant, yyyy-mm-dd. */
@@ -73,6 +74,18 @@ async function versionsOf(db: DbOrTx, ids: string[]): Promise<Map<string, Publis
   return new Map(rows.map((row) => [row.id, row.content]))
 }
 
+function blockLengths(
+  { spec }: PublishedVersion,
+  { segments }: Timeline,
+): ScheduledClassSummary['blocks'] {
+  return spec.blocks.map(({ id, kind }) => ({
+    kind,
+    lengthMs: segments
+      .filter((segment) => segment.block === id)
+      .reduce((sum, segment) => sum + segment.endMs - segment.startMs, 0),
+  }))
+}
+
 /** Summaries of rows, with the viewer's own attempts. */
 async function summarise(
   db: DbOrTx,
@@ -84,10 +97,17 @@ async function summarise(
     rows.map((row) => row.scheduled.versionId),
   )
   const lengths = new Map(
-    [...versions].map(([id, version]) => [
-      id,
-      { real: realLengthMs(version), inClass: compile(version).lengthMs },
-    ]),
+    [...versions].map(([id, version]) => {
+      const timeline = compile(version)
+      return [
+        id,
+        {
+          real: realLengthMs(version),
+          inClass: timeline.lengthMs,
+          blocks: blockLengths(version, timeline),
+        },
+      ]
+    }),
   )
   const own =
     rows.length === 0
@@ -125,6 +145,7 @@ async function summarise(
       coachName,
       realLengthMs: length?.real ?? 0,
       classLengthMs: length?.inClass ?? 0,
+      blocks: length?.blocks ?? [],
       myAttempts: own
         .filter((attempt) => attempt.scheduledClassId === scheduled.id)
         .map(({ attemptId, state, startedAt }) => ({

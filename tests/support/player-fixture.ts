@@ -227,6 +227,7 @@ export function playerFixture(change: Partial<PlayerData> = {}): PlayerData {
       coachName: 'Ifeoma Adeyemi',
       realLengthMs: 1_980_000,
       classLengthMs: 1_960_000,
+      blocks: [],
       myAttempts: [],
     },
     versionId: '01920000-0000-7000-8000-000000000002',

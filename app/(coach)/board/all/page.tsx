@@ -2,11 +2,13 @@ import type { Metadata } from 'next'
 import { addDays, format } from 'date-fns'
 import { ClassDays } from '@/components/classes/class-days'
 import { PageFrame } from '@/components/site/page-frame'
+import { PageTitle } from '@/components/ui/heading'
 import { requireRole } from '@/server/auth/viewer'
 import { paths } from '@/server/contract/paths'
 import { participation } from '@/server/data/boards'
 import { listBetween, localDay } from '@/server/data/classes'
 import { defaultDb } from '@/server/data/db'
+import { readerDateStyle } from '@/server/http/reader'
 
 export const metadata: Metadata = { title: 'All boards' }
 
@@ -26,7 +28,7 @@ export default async function AllBoardsPage() {
   return (
     <PageFrame viewer={viewer}>
       <div className="max-w-5xl page">
-        <h1 className="text-6xl font-extrabold sm:text-7xl">All boards</h1>
+        <PageTitle>All boards</PageTitle>
         <p className="mt-3 text-text-quiet">Today and the twelve weeks before it.</p>
         <div className="mt-6 border-t-4 border-line">
           {classes.length === 0 ? (
@@ -34,6 +36,8 @@ export default async function AllBoardsPage() {
           ) : (
             <ClassDays
               classes={classes}
+              today={today}
+              dateStyle={await readerDateStyle()}
               hrefOf={paths.boardOf}
               remark={({ scheduledClassId }) => {
                 const count = counts.get(scheduledClassId)

@@ -1,5 +1,8 @@
 import type { Metadata } from 'next'
+import { cache } from 'react'
 import { ClassOverview } from '@/components/classes/class-overview'
+import { KitLines } from '@/components/classes/kit-lines'
+import { HealthLines } from '@/components/health/health-lines'
 import { PageFrame } from '@/components/site/page-frame'
 import { orNotFound, requireViewer } from '@/server/auth/viewer'
 import { paths } from '@/server/contract/paths'
@@ -7,33 +10,52 @@ import { getScheduledClass } from '@/server/data/classes'
 import { defaultDb } from '@/server/data/db'
 import { getHealth } from '@/server/data/health'
 import { getKit } from '@/server/data/people'
+import { readerDateStyle } from '@/server/http/reader'
 
-export const metadata: Metadata = { title: 'Class' }
-
-export default async function ClassPage({
-  params,
-}: {
+interface PageProps {
   params: Promise<{ scheduledClassId: string }>
-}) {
-  const { scheduledClassId } = await params
+}
+
+/** Once a request, for the page and its title. */
+const readClass = cache(async (scheduledClassId: string) => {
   const viewer = await requireViewer(paths.classPage(scheduledClassId))
+  const found = await orNotFound(getScheduledClass(viewer, { scheduledClassId }, defaultDb()))
+  return { viewer, ...found }
+})
+
+export async function generateMetadata({ params }: PageProps): Promise<Metadata> {
+  const { scheduledClass } = await readClass((await params).scheduledClassId)
+  return { title: scheduledClass.title }
+}
+
+export default async function ClassPage({ params }: PageProps) {
+  const { viewer, scheduledClass, version } = await readClass((await params).scheduledClassId)
   const db = defaultDb()
   const now = new Date()
-  const { scheduledClass, version } = await orNotFound(
-    getScheduledClass(viewer, { scheduledClassId }, db),
-  )
+  const dateStyle = await readerDateStyle()
   const canPlay = viewer.roles.includes('member')
+  const { timeZone } = viewer.gym
   return (
     <PageFrame viewer={viewer}>
       <ClassOverview
         scheduledClass={scheduledClass}
         version={version}
-        timeZone={viewer.gym.timeZone}
+        timeZone={timeZone}
+        dateStyle={dateStyle}
         now={now}
         when={null}
-        kit={await getKit(viewer, {}, db)}
-        health={canPlay ? await getHealth(viewer, { now }, db) : null}
         canPlay={canPlay}
+        kit={<KitLines version={version} kit={await getKit(viewer, {}, db)} isOwn={canPlay} />}
+        health={
+          canPlay ? (
+            <HealthLines
+              health={await getHealth(viewer, { now }, db)}
+              timeZone={timeZone}
+              dateStyle={dateStyle}
+              from={paths.classPage(scheduledClass.scheduledClassId)}
+            />
+          ) : null
+        }
       />
     </PageFrame>
   )
