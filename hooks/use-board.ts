@@ -55,11 +55,11 @@ export function useBoard(initial: BoardDto): LiveBoard {
         wanted ??= setTimeout(
           () => {
             wanted = undefined
+            readMs = Date.now()
             void client.invalidateQueries({ queryKey: ['board', scheduledClassId] })
           },
           Math.max(0, readMs + LEAST_BETWEEN_MS - Date.now()),
         )
-        readMs = Math.max(readMs, Date.now())
       },
     })
     return () => {
