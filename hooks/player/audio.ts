@@ -2,7 +2,7 @@
  * Sounds on the audio clock. howler makes, unlocks and mixes the context and is the way out where there
  * is none; but it starts sounds now, not at a time, so marks are put on its context as buffer sources.
  */
-import { Howl, Howler } from 'howler'
+import { Howl, Howler } from 'howler/dist/howler.core.min.js'
 import type { SoundName, SoundPort } from './ports'
 import type { PlayerState } from './types'
 

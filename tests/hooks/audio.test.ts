@@ -48,7 +48,7 @@ const { howler } = vi.hoisted(() => ({
     mute: vi.fn(),
   },
 }))
-vi.mock('howler', () => ({ Howler: howler, Howl: class {} }))
+vi.mock('howler/dist/howler.core.min.js', () => ({ Howler: howler, Howl: class {} }))
 
 describe('what is heard when', () => {
   const now = 10_000
