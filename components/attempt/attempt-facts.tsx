@@ -1,5 +1,6 @@
+import type { ReactNode } from 'react'
 import type { AttemptDto } from '@/server/contract/attempts'
-import { dateOf, timeOfDay } from '@/server/contract/format'
+import { dateOf, timeOfDay, type DateStyle } from '@/server/contract/format'
 import { HURT_PLACE_TEXT } from '@/server/engine/fit/hurt'
 import { STOP_SIGN_TEXT } from '@/server/engine/fit/stop-signs'
 import { CR10_ANCHORS } from '@/server/engine/load/session-rpe'
@@ -13,27 +14,21 @@ const STATE_TEXT = {
   finished: 'Finished',
 } as const
 
+interface AttemptFactsProps {
+  attempt: AttemptDto
+  timeZone: string
+  dateStyle?: DateStyle
+}
+
 /** How an attempt stands and felt: stop and pain first. */
-export function AttemptFacts({ attempt, timeZone }: { attempt: AttemptDto; timeZone: string }) {
+export function AttemptFacts({ attempt, timeZone, dateStyle = 'day-first' }: AttemptFactsProps) {
   const { tally } = attempt
   const anchor = CR10_ANCHORS.find((one) => one.rating === tally.rating?.rpe)?.anchor
+  const { intendedRpe } = attempt.version.spec
   const hurts = [...tally.hurts, ...(tally.rating?.hurts ?? [])]
-  const facts: [string, string][] = [
-    [
-      STATE_TEXT[tally.state],
-      attempt.startedAt
-        ? `${dateOf(attempt.startedAt, timeZone)}, started ${timeOfDay(attempt.startedAt, timeZone)}${attempt.finishedAt ? `, finished ${timeOfDay(attempt.finishedAt, timeZone)}` : ''}`
-        : '',
-    ],
-  ]
-  if (tally.rating)
-    facts.push(['RPE', `${tally.rating.rpe} of 10${anchor ? `, ${anchor.toLowerCase()}` : ''}`])
-  if (attempt.version.spec.intendedRpe !== undefined) {
-    facts.push(['Meant to feel like', `${attempt.version.spec.intendedRpe} of 10`])
-  }
-  if (attempt.late) facts.push(['Late', 'after the window had closed'])
+  const time = (instant: string) => timeOfDay(instant, timeZone, dateStyle)
   return (
-    <div className="space-y-4">
+    <div className="space-y-5">
       {tally.stop ? (
         <p className="border-l-8 border-stop pl-4">
           <strong className="text-stop">
@@ -64,17 +59,62 @@ export function AttemptFacts({ attempt, timeZone }: { attempt: AttemptDto; timeZ
           {attempt.todayNote}
         </p>
       ) : null}
-      <dl className="flex flex-wrap gap-x-10 gap-y-3">
-        {facts.map(([term, value]) => (
-          <div key={term}>
-            <dt className="text-base text-text-quiet">{term}</dt>
-            <dd className="font-semibold">{value}</dd>
-          </div>
-        ))}
+      <dl className="flex flex-wrap items-start gap-x-12 gap-y-4">
+        {tally.rating ? (
+          <Fact term="RPE" value={<Large number={tally.rating.rpe} of="of 10" />}>
+            {anchor?.toLowerCase()}
+          </Fact>
+        ) : null}
+        {intendedRpe === undefined ? null : (
+          <Fact term="Meant to feel like" value={<Large number={intendedRpe} of="of 10" />} />
+        )}
+        <Fact
+          term={STATE_TEXT[tally.state]}
+          value={
+            attempt.startedAt ? (
+              <>
+                {time(attempt.startedAt)}
+                {attempt.finishedAt ? ` to ${time(attempt.finishedAt)}` : ''}
+              </>
+            ) : null
+          }
+        >
+          {attempt.startedAt ? dateOf(attempt.startedAt, timeZone, dateStyle) : null}
+        </Fact>
+        {attempt.late ? <Fact term="Late" value="after the window had closed" /> : null}
       </dl>
       {tally.rating?.note ? (
-        <blockquote className="text-xl">“{tally.rating.note}”</blockquote>
+        <blockquote className="max-w-3xl text-xl">“{tally.rating.note}”</blockquote>
       ) : null}
     </div>
+  )
+}
+
+interface FactProps {
+  term: string
+  value: ReactNode
+  children?: ReactNode
+}
+
+function Fact({ term, value, children }: FactProps) {
+  return (
+    <div>
+      <dt className="text-text-quiet">{term}</dt>
+      <dd className="flex min-h-12 flex-wrap items-end gap-x-3 text-xl leading-tight font-semibold">
+        {value}
+        {children ? (
+          <span className="text-base font-normal text-text-quiet">{children}</span>
+        ) : null}
+      </dd>
+    </div>
+  )
+}
+
+function Large({ number, of }: { number: number; of: string }) {
+  return (
+    <span className="flex items-baseline gap-2">
+      <span className="figures text-5xl">{number}</span>
+      <span className="text-base font-normal">{of}</span>
+    </span>
   )
 }

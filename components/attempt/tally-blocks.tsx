@@ -1,5 +1,7 @@
+import clsx from 'clsx'
 import { Rungs } from '@/components/lane/rungs'
 import { rungWindow } from '@/components/lane/rung-window'
+import { plural } from '@/server/contract/format'
 import { blockPlan, roundReps } from '@/server/engine/pace/block-plan'
 import { AS_PLANNED } from '@/server/engine/spec/names'
 import type { PublishedVersion } from '@/server/engine/spec/version'
@@ -37,25 +39,26 @@ function BlockSummary({ version, tally }: { version: PublishedVersion; tally: Bl
       .flatMap((slug) => movement?.options.find((one) => one.option === slug) ?? [])
       .map((option) => `${movement?.name ?? ''}: ${option.name.toLowerCase()}`)
   })
+  const isUntouched = !hasResult(tally) && (tally.skipped !== null || !tally.over)
   return (
-    <li className="border-t-4 border-line pt-2">
+    <li className="border-t-4 border-line pt-3">
       <div className="flex items-baseline justify-between gap-4">
         <h3 className="text-xl">{block.title}</h3>
-        <p className="figures text-3xl whitespace-nowrap">
-          {tally.skipped && !hasResult(tally) ? '' : scoreText(tally)}
-        </p>
+        <p className="figures text-4xl whitespace-nowrap">{isUntouched ? '' : scoreText(tally)}</p>
       </div>
       {tally.skipped ? (
         <p>
           {hasResult(tally) ? 'The rest was skipped' : 'Skipped'}
           {tally.skipped.reason ? `: ${tally.skipped.reason}` : ''}
         </p>
+      ) : isUntouched ? (
+        <p className="text-text-quiet">Not reached</p>
       ) : null}
-      {tally.skipped && !hasResult(tally) ? null : (
+      {isUntouched ? null : (
         <>
           {plan && tally.rounds > 0 ? (
             <Rungs
-              className="my-2 h-24 max-w-full"
+              className="my-3 h-28 max-w-full"
               {...rungWindow({
                 repsOf: (round) =>
                   round > Math.min(plan.roundLimit, tally.rounds) ? null : roundReps(plan, round),
@@ -66,12 +69,37 @@ function BlockSummary({ version, tally }: { version: PublishedVersion; tally: Bl
               })}
             />
           ) : null}
-          {plan ? <p className="text-text-quiet">{tally.totalReps} reps in all</p> : null}
+          {plan ? <p className="text-text-quiet">{plural(tally.totalReps, 'rep')} in all</p> : null}
+          {tally.pieces ? <Pieces {...tally.pieces} /> : null}
         </>
       )}
-      {taken.length > 0 ? <p>{taken.join(', ')}</p> : null}
+      {[...new Set(taken)].map((text) => (
+        <p key={text}>{text}</p>
+      ))}
       {tally.restTakenMs >= 1_000 ? <p>{clockText(tally.restTakenMs)} rest as needed</p> : null}
       {tally.countedAfterwards ? <p className="text-text-quiet">Counted after class</p> : null}
     </li>
+  )
+}
+
+/** Above it, pieces would be finer than a line. */
+const MOST_PIECES = 40
+
+/** Timed pieces as bays in a row: done filled, with a rest inside hatched, the others open. */
+function Pieces({ done, partDone, of }: NonNullable<BlockTally['pieces']>) {
+  if (of > MOST_PIECES) return null
+  return (
+    <div aria-hidden className="my-3 flex h-7 max-w-md border-2 border-line">
+      {Array.from({ length: of }, (_, index) => (
+        <span
+          key={index}
+          className={clsx(
+            'flex-1 border-line not-last:border-r-2',
+            index < done && 'bg-text not-last:border-r-ground!',
+            index >= done && index < done + partDone && 'hatched',
+          )}
+        />
+      ))}
+    </div>
   )
 }

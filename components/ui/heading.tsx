@@ -1,19 +1,34 @@
 import clsx from 'clsx'
-import type { ReactNode } from 'react'
+import type { CSSProperties, ReactNode } from 'react'
 
-/** What a page is, as large as the floor's own lettering. `size`: `long` for names of people and sentences. */
+/** Width of a heading's letters in em, on the generous side. */
+const LETTER_EM = 0.62
+
+type FitStyle = CSSProperties & { '--fit': string }
+
+/**
+ * What a page is, as large as the floor's own lettering and never so large that a word would break.
+ * `size`: `long` for names of people and sentences.
+ */
 export function PageTitle({
   children,
   size = 'short',
 }: {
-  children: ReactNode
+  children: string
   size?: 'short' | 'long'
 }) {
+  const longest = Math.max(1, ...children.split(/[\s-]+/).map((word) => word.length))
+  const style: FitStyle = {
+    '--fit': `calc((100vw - 2.2rem) / ${(longest * LETTER_EM).toFixed(2)})`,
+  }
   return (
     <h1
+      style={style}
       className={clsx(
         '-ml-[0.04em] leading-[0.95] font-extrabold text-balance [overflow-wrap:anywhere]',
-        size === 'short' ? 'text-6xl sm:text-7xl lg:text-8xl' : 'text-5xl sm:text-6xl',
+        size === 'short'
+          ? 'text-[min(3.75rem,var(--fit))] sm:text-[min(4.5rem,var(--fit))] lg:text-[min(6rem,var(--fit))]'
+          : 'text-[min(3rem,var(--fit))] sm:text-[min(3.75rem,var(--fit))]',
       )}
     >
       {children}

@@ -1,28 +1,41 @@
 import type { Metadata } from 'next'
 import Link from 'next/link'
 import { notFound } from 'next/navigation'
+import { cache } from 'react'
 import { AttemptFacts } from '@/components/attempt/attempt-facts'
 import { Holds } from '@/components/attempt/holds'
 import { TallyBlocks } from '@/components/attempt/tally-blocks'
 import { PageFrame } from '@/components/site/page-frame'
 import { buttonClass } from '@/components/ui/button'
+import { PageTitle } from '@/components/ui/heading'
 import { orNotFound, requireRole } from '@/server/auth/viewer'
 import { dayName } from '@/server/contract/format'
 import { paths } from '@/server/contract/paths'
 import { getAttempt } from '@/server/data/attempts'
 import { defaultDb } from '@/server/data/db'
+import { readerDateStyle } from '@/server/http/reader'
 
-export const metadata: Metadata = { title: 'My tally' }
-
-export default async function AttemptTallyPage({
-  params,
-}: {
+interface PageProps {
   params: Promise<{ attemptId: string }>
-}) {
-  const { attemptId } = await params
+}
+
+/** Once a request, for the page and its title. A coach's look at somebody else's is another page. */
+const readAttempt = cache(async (attemptId: string) => {
   const viewer = await requireRole(paths.attemptTally(attemptId), 'member')
   const attempt = await orNotFound(getAttempt(viewer, { attemptId }, defaultDb()))
-  if (attempt.membershipId !== viewer.membershipId) notFound()
+  return attempt.membershipId === viewer.membershipId ? { viewer, attempt } : notFound()
+})
+
+export async function generateMetadata({ params }: PageProps): Promise<Metadata> {
+  const { attempt } = await readAttempt((await params).attemptId)
+  return { title: `${attempt.scheduledClass.title}, my tally` }
+}
+
+export default async function AttemptTallyPage({ params }: PageProps) {
+  const { viewer, attempt } = await readAttempt((await params).attemptId)
+  const dateStyle = await readerDateStyle()
+  const { timeZone } = viewer.gym
+  const { scheduledClass } = attempt
   return (
     <PageFrame viewer={viewer}>
       <div className="space-y-10 page">
@@ -30,17 +43,24 @@ export default async function AttemptTallyPage({
           <Link className={buttonClass('text')} href={paths.tally()}>
             All my classes
           </Link>
-          <h1 className="mt-2 text-5xl font-extrabold sm:text-6xl">
-            {attempt.scheduledClass.title}
-          </h1>
-          <p className="mt-2 text-text-quiet">{dayName(attempt.scheduledClass.day)}</p>
+          <PageTitle>{scheduledClass.title}</PageTitle>
+          <p className="mt-3 text-text-quiet">
+            {dayName(scheduledClass.day, dateStyle)}
+            {scheduledClass.coachName ? ` with ${scheduledClass.coachName}` : ''} ·{' '}
+            <Link
+              className="text-rest underline decoration-3 underline-offset-6 hover:decoration-present"
+              href={paths.classPage(scheduledClass.scheduledClassId)}
+            >
+              The class
+            </Link>
+          </p>
         </div>
-        <AttemptFacts attempt={attempt} timeZone={viewer.gym.timeZone} />
+        <AttemptFacts attempt={attempt} timeZone={timeZone} dateStyle={dateStyle} />
         <section>
-          <h2 className="mb-4 text-2xl">Block by block</h2>
+          <h2 className="mb-4 text-2xl sm:text-3xl">Block by block</h2>
           <TallyBlocks version={attempt.version} tally={attempt.tally} />
         </section>
-        <Holds holds={attempt.holds} as="member" timeZone={viewer.gym.timeZone} />
+        <Holds holds={attempt.holds} as="member" timeZone={timeZone} />
       </div>
     </PageFrame>
   )
