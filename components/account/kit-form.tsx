@@ -1,6 +1,7 @@
 'use client'
 import { useActionState, useState } from 'react'
-import { FormMessage } from '@/components/ui/form-errors'
+import { KitPicture } from '@/components/figure/kit-picture'
+import { FormMessage, useFormErrors } from '@/components/ui/form-errors'
 import { KeptForm } from '@/components/ui/kept-form'
 import { Notice } from '@/components/ui/notice'
 import { SubmitButton } from '@/components/ui/submit-button'
@@ -17,24 +18,32 @@ const ITEMS = [
 ] as const
 const MOST = 20
 
+const isSame = (one: Record<string, number>, other: Record<string, number>): boolean =>
+  ITEMS.every(([item]) => (one[item] ?? 0) === (other[item] ?? 0))
+
 export function KitForm({ kit }: { kit: Record<string, number> }) {
   const [result, action, isPending] = useActionState(saveOwnKit, null)
+  const { form, message } = useFormErrors(result)
   const [counts, setCounts] = useState<Record<string, number>>(kit)
   const set = (item: string, count: number) =>
     setCounts({ ...counts, [item]: Math.min(MOST, Math.max(0, count)) })
+  // After saving the page is read again, so `kit` is what is stored.
+  const isSaved = isSame(counts, kit)
   return (
-    <KeptForm action={action} isPending={isPending} className="max-w-md">
-      <FormMessage result={result} />
-      {result?.ok ? <Notice tone="saved">Your kit is saved.</Notice> : null}
-      <ul className="mt-3 border-t-4 border-line">
+    <KeptForm ref={form} action={action} isPending={isPending}>
+      <FormMessage result={result} ref={message} />
+      <ul className="border-t-4 border-fill">
         {ITEMS.map(([item, label]) => {
           const count = counts[item] ?? 0
           return (
             <li
               key={item}
-              className="flex items-center justify-between border-b-4 border-fill py-1.5"
+              className="flex items-center justify-between gap-4 border-b-4 border-fill py-1.5"
             >
-              <span className="font-semibold">{label}</span>
+              <span className="flex items-center gap-5 font-semibold">
+                <KitPicture item={item} count={1} />
+                {label}
+              </span>
               <span className="flex items-center">
                 <input type="hidden" name={item} value={count} />
                 <Step
@@ -62,9 +71,16 @@ export function KitForm({ kit }: { kit: Record<string, number> }) {
           )
         })}
       </ul>
-      <SubmitButton isPending={isPending} pending="Saving" className="mt-5">
-        Save my kit
-      </SubmitButton>
+      <div className="mt-5 flex min-h-14 flex-wrap items-center gap-4">
+        <SubmitButton isPending={isPending} pending="Saving">
+          Save my kit
+        </SubmitButton>
+        {result?.ok && isSaved ? (
+          <Notice tone="saved">Your kit is saved.</Notice>
+        ) : isSaved ? null : (
+          <p className="text-text-quiet">Not saved yet.</p>
+        )}
+      </div>
     </KeptForm>
   )
 }
@@ -76,14 +92,15 @@ interface StepProps {
   children: string
 }
 
+/** At its end a step stays reachable, so that the focus is not lost under the finger. */
 function Step({ label, disabled, onClick, children }: StepProps) {
   return (
     <button
       type="button"
       aria-label={label}
-      disabled={disabled}
-      onClick={onClick}
-      className="size-12 cursor-pointer border-4 border-line font-display text-2xl leading-none font-bold hover:bg-fill disabled:cursor-not-allowed disabled:opacity-40"
+      aria-disabled={disabled}
+      onClick={disabled ? undefined : onClick}
+      className="size-12 cursor-pointer border-4 border-line font-display text-2xl leading-none font-bold hover:bg-fill aria-disabled:cursor-not-allowed aria-disabled:border-line-lesser aria-disabled:bg-transparent aria-disabled:text-text-quiet"
     >
       {children}
     </button>
