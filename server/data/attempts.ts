@@ -3,6 +3,7 @@ import 'server-only'
 import { and, asc, desc, eq, inArray, lt, sql } from 'drizzle-orm'
 import { v7 } from 'uuid'
 import type { DbOrTx } from '@/db/client'
+import { timed } from '@/db/deadline'
 import { attemptEvents } from '@/db/schema/attempt-events'
 import { attempts } from '@/db/schema/attempts'
 import { auditEntries } from '@/db/schema/audit-entries'
@@ -18,7 +19,6 @@ import type { ClassEvent } from '@/server/engine/tally/events'
 import { fold } from '@/server/engine/tally/fold'
 import type { AttemptState } from '@/server/engine/tally/types'
 import { getScheduledClass, visibleTo } from './classes'
-import { timed } from './deadline'
 import { getHealth, openHolds } from './health'
 
 /** Channel on which ids of changed boards are told to every process. */
@@ -144,7 +144,7 @@ async function begin(
       membershipId: viewer.membershipId,
       scheduledClassId: scheduled.id,
       versionId: input.versionId,
-      late: now > scheduled.closesAt,
+      late: startedAt(input, now) > scheduled.closesAt,
       todayNote: input.todayNote?.trim() || null,
       createdAt: now,
     })
@@ -155,6 +155,12 @@ async function begin(
     .where(eq(attempts.id, attemptId))
     .for('update')
   if (made?.membershipId !== viewer.membershipId) throw notThere()
+}
+
+/** When the member began, by their own clock: a class that was played without a network comes later. Never after `now`. */
+function startedAt(input: RecordEventsInput, now: Date): Date {
+  const started = input.events.find((event) => event.type === 'started')
+  return started ? new Date(Math.min(started.wallMs, now.getTime())) : now
 }
 
 /** What beside the events follows from new ones: the attempt's dates and state, holds, word to the boards. */

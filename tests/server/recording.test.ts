@@ -167,13 +167,15 @@ describe('recording', () => {
   })
 
   it('marks an attempt that begins after the window as late', async () => {
-    const attemptId = v7()
-    await recordEvents(
-      member,
-      { attemptId, input: input(started()), now: new Date('2026-12-01T23:00:00Z') },
-      test.db,
-    )
-    expect((await getAttempt(member, { attemptId }, test.db)).late).toBe(true)
+    const now = new Date('2026-12-01T23:00:00Z')
+    const sent = async (events: ClassEvent[]) => {
+      const attemptId = v7()
+      await recordEvents(member, { attemptId, input: input(events), now }, test.db)
+      return (await getAttempt(member, { attemptId }, test.db)).late
+    }
+    expect(await sent(started().map((event) => ({ ...event, wallMs: now.getTime() })))).toBe(true)
+    // Played in the window without a network, and sent an hour after it.
+    expect(await sent(started())).toBe(false)
   })
 
   it('raises a hold for every hurt, once', async () => {
