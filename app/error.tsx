@@ -11,6 +11,7 @@ export default function ErrorPage({
 }) {
   return (
     <MessagePage title="That did not work" figure="hip-hinge">
+      <title>That did not work · Floorside</title>
       <p>
         The page could not be read just now. Nothing that you did is lost: rounds are kept on this
         computer until they are sent.

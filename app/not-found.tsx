@@ -1,6 +1,9 @@
+import type { Metadata } from 'next'
 import { MessagePage } from '@/components/site/message-page'
 import { LinkButton } from '@/components/ui/button'
 import { paths } from '@/server/contract/paths'
+
+export const metadata: Metadata = { title: 'Nothing here' }
 
 export default function NotFound() {
   return (

@@ -1,5 +1,6 @@
 /**
- * Writes public/sw.js: a class that was loaded comes back at a reload without a network. Its caches are
+ * Writes public/sw.js: a class that was loaded comes back at a reload without a network, and every other
+ * page says that there is none. Its caches are
  * named by the build, so a new one starts clean. `node scripts/service-worker.mjs [BUILD]`, after the
  * build, whose own id is taken where none is given. With `-` after it, to standard output.
  */
@@ -16,10 +17,15 @@ const list = (folder) =>
 const source = `// Made by scripts/service-worker.mjs; not to be edited.
 const CACHE = 'floorside-${build}'
 const FIXED = ${JSON.stringify([...list('sounds'), ...list('fonts')])}
+const OFFLINE = '/offline'
 const ANSWER_MS = 4000
 
 self.addEventListener('install', (event) => {
-  event.waitUntil(caches.open(CACHE).then((cache) => cache.addAll(FIXED)).then(() => self.skipWaiting()))
+  event.waitUntil(
+    caches.open(CACHE)
+      .then((cache) => Promise.all([cache.addAll(FIXED), keepOffline(cache)]))
+      .then(() => self.skipWaiting()),
+  )
 })
 self.addEventListener('activate', (event) => {
   event.waitUntil(
@@ -32,6 +38,14 @@ self.addEventListener('message', (event) => {
   if (event.data?.type === 'keep-page') event.waitUntil(keepPage(event.data.page, event.data.assets))
 })
 
+async function keepOffline(cache) {
+  const answer = await fetch(OFFLINE)
+  if (!answer.ok) return
+  const page = await answer.clone().text()
+  await cache.put(OFFLINE, answer)
+  const assets = new Set(page.match(/\\/_next\\/static\\/[\\w./~-]+\\.(?:js|css)/g))
+  await Promise.all([...assets].map((asset) => cache.add(asset)))
+}
 async function keepPage(page, assets) {
   if (!String(page).startsWith('/play/')) return
   const cache = await caches.open(CACHE)
@@ -54,8 +68,17 @@ async function fromNetworkFirst(request) {
     return await Promise.race([fresh, late])
   } catch (error) {
     const kept = await caches.match(new URL(request.url).pathname)
-    if (kept) return kept
-    return fresh
+    return kept ?? orOffline(fresh)
+  }
+}
+
+async function orOffline(fresh) {
+  try {
+    return await fresh
+  } catch (error) {
+    const page = await caches.match(OFFLINE)
+    if (page) return page
+    throw error
   }
 }
 
@@ -66,6 +89,7 @@ self.addEventListener('fetch', (event) => {
   // Data of the framework and of our own routes is never kept.
   if (request.headers.has('rsc') || address.searchParams.has('_rsc') || address.pathname.startsWith('/api/')) return
   if (request.mode === 'navigate' && address.pathname.startsWith('/play/')) event.respondWith(fromNetworkFirst(request))
+  else if (request.mode === 'navigate') event.respondWith(orOffline(fetch(request)))
   else if (/^\\/(_next\\/static|sounds|fonts)\\//.test(address.pathname)) event.respondWith(fromCacheFirst(request))
 })
 `

@@ -26,7 +26,7 @@ export function SiteHeader({ viewer }: { viewer: Viewer }) {
   ]
   const others = viewer.gyms.filter((gym) => gym.gymId !== viewer.gymId)
   return (
-    <header className="flex flex-wrap items-center gap-x-4 page sm:gap-x-6 pt-2 sm:pt-4">
+    <header className="flex flex-wrap items-center gap-x-4 page pt-2 sm:gap-x-6 sm:pt-4">
       <a
         href="#content"
         className="sr-only bg-button px-4 py-2 text-on-button focus:not-sr-only focus:absolute focus:top-2 focus:left-2 focus:z-40"
@@ -37,7 +37,9 @@ export function SiteHeader({ viewer }: { viewer: Viewer }) {
         <Link href={paths.home()} className="font-display text-xl font-extrabold wide">
           Floorside
         </Link>
-        <span className="truncate text-[0.9rem] text-text-quiet sm:text-base">{viewer.gym.name}</span>
+        <span className="truncate text-[0.9rem] text-text-quiet sm:text-base">
+          {viewer.gym.name}
+        </span>
       </p>
       <nav
         aria-label="Main"

@@ -26,6 +26,32 @@ export async function keepThisPage(): Promise<void> {
   active?.postMessage({ type: 'keep-page', page: location.pathname, assets })
 }
 
+export interface KeptClass {
+  path: string
+  title: string
+}
+
+/** Classes that this browser can play without a network. */
+export async function keptClasses(): Promise<KeptClass[]> {
+  if (typeof caches === 'undefined') return []
+  const kept: KeptClass[] = []
+  try {
+    for (const name of await caches.keys()) {
+      const cache = await caches.open(name)
+      for (const request of await cache.keys()) {
+        const path = new URL(request.url).pathname
+        const page = path.startsWith('/play/') ? await cache.match(request) : undefined
+        if (!page) continue
+        const { title } = new DOMParser().parseFromString(await page.text(), 'text/html')
+        kept.push({ path, title: title.split(' · ')[0] ?? title })
+      }
+    }
+  } catch {
+    // Without storage nothing was kept.
+  }
+  return kept
+}
+
 /** At sign-out, and where another person signs in: pages kept for one are never shown to the next. */
 export async function forgetKeptPages(): Promise<void> {
   if (typeof caches === 'undefined') return

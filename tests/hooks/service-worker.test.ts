@@ -4,6 +4,8 @@ import { runInNewContext } from 'node:vm'
 import { beforeEach, describe, expect, it, vi } from 'vitest'
 
 const ORIGIN = 'https://gym.example'
+const OFFLINE_PAGE =
+  '<link href="/_next/static/chunks/page.css"><script src="/_next/static/chunks/page.js"></script>'
 
 interface FetchEvent {
   request: Request & { mode: string }
@@ -17,7 +19,11 @@ function workerOf(source: string) {
     new URL(typeof request === 'string' ? request : request.url, ORIGIN).href
   const network = vi.fn(
     async (request: Request | string): Promise<Response> =>
-      new Response(`fresh ${new URL(addressOf(request)).pathname}`),
+      new Response(
+        addressOf(request) === `${ORIGIN}/offline`
+          ? OFFLINE_PAGE
+          : `fresh ${new URL(addressOf(request)).pathname}`,
+      ),
   )
   const cacheOf = (name: string) => {
     const kept = stored.get(name) ?? new Map<string, Response>()
@@ -115,7 +121,7 @@ describe('the service worker', () => {
     expect(await worker.ask('/play/one?from=today', page)).toBe('fresh /play/one')
     worker.network.mockRejectedValue(new TypeError('offline'))
     expect(await worker.ask('/play/one', page)).toBe('fresh /play/one')
-    await expect(worker.ask('/play/two', page)).rejects.toThrow()
+    expect(await worker.ask('/play/two', page)).toBe(OFFLINE_PAGE)
   })
 
   it('keeps a class page and its scripts when the player asks, and comes back with them offline', async () => {
@@ -129,6 +135,23 @@ describe('the service worker', () => {
     expect(await worker.ask('/_next/static/chunks/a.js')).toBe('fresh /_next/static/chunks/a.js')
     const kept = [...(worker.stored.get('floorside-build-7')?.keys() ?? [])]
     expect(kept.some((address) => address.includes('/api/'))).toBe(false)
+  })
+
+  it('shows any other page fresh and keeps none of them', async () => {
+    expect(await worker.ask('/today', { mode: 'navigate' })).toBe('fresh /today')
+    const kept = [...(worker.stored.get('floorside-build-7')?.keys() ?? [])]
+    expect(kept).not.toContain(`${ORIGIN}/today`)
+  })
+
+  it('says that there is no network in the place of a page that it does not have, drawn as ever', async () => {
+    worker.network.mockRejectedValue(new TypeError('offline'))
+    expect(await worker.ask('/today', { mode: 'navigate' })).toBe(OFFLINE_PAGE)
+    expect(await worker.ask('/_next/static/chunks/page.css')).toBe(
+      'fresh /_next/static/chunks/page.css',
+    )
+    expect(await worker.ask('/_next/static/chunks/page.js')).toBe(
+      'fresh /_next/static/chunks/page.js',
+    )
   })
 
   it('keeps no other page when asked to', async () => {
@@ -151,7 +174,6 @@ describe('the service worker', () => {
     ['data of the framework by its address', '/play/one?_rsc=abc', {}],
     ['our own routes', '/api/attempts/1/events', {}],
     ['anything that changes something', '/play/one', { method: 'POST', mode: 'navigate' }],
-    ['other pages', '/today', { mode: 'navigate' }],
   ])('leaves %s alone', async (_, path, more) => {
     expect(await worker.ask(path, more)).toBeNull()
     expect(worker.network).not.toHaveBeenCalledWith(expect.objectContaining({ url: ORIGIN + path }))

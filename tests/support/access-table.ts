@@ -28,6 +28,7 @@ export const PAGES: Record<string, Row> = {
   //                            out        member other  coach  coach2 owner  gone
   '/': row('sign-in', 'on', 'on', 'on', 'on', 'on', 'sign-in'),
   '/sign-in': row('ok', 'on', 'on', 'on', 'on', 'on', 'ok'),
+  '/offline': row('ok', 'ok', 'ok', 'ok', 'ok', 'ok', 'ok'),
   '/today': row('sign-in', 'ok', 'ok', '404', '404', '404', 'sign-in'),
   '/classes': row('sign-in', 'ok', 'ok', '404', '404', '404', 'sign-in'),
   '/classes/[scheduledClassId]': row('sign-in', 'ok', 'ok', 'ok', '404', 'ok', 'sign-in'),

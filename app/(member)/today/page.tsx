@@ -138,7 +138,7 @@ async function NothingToday({ viewer, now }: { viewer: Viewer; now: Date }) {
           </p>
         </div>
         <StillFigure
-          figure="march"
+          figure="march-in-place"
           frame="own"
           label=""
           className="h-44 w-auto sm:mr-[12%] sm:h-64"
