@@ -45,7 +45,14 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
   const groups = groupRows(rows, view, nowMs)
   const widths = blocks.map((block) => columnPx(block, shapes.get(block.id)))
   return (
-    <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="Members by blocks">
+    <div
+      // A phone shows the list instead, as soon as the page has its script. Positioned, so that nothing
+      // hidden in a cell widens the page.
+      className="relative overflow-x-auto max-[50rem]:hidden"
+      tabIndex={0}
+      role="region"
+      aria-label="Members by blocks"
+    >
       <table
         className="w-full table-fixed border-collapse text-left text-[15px]"
         style={{
