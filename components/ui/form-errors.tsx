@@ -1,5 +1,5 @@
 'use client'
-import { useEffect, useRef, type Ref, type RefObject } from 'react'
+import { useLayoutEffect, useRef, type Ref, type RefObject } from 'react'
 import { Notice } from './notice'
 
 /** What came of a form: done, or a sentence for the person. */
@@ -14,7 +14,7 @@ interface FormErrors {
 export function useFormErrors(result: FormResult | null): FormErrors {
   const form = useRef<HTMLFormElement>(null)
   const message = useRef<HTMLDivElement>(null)
-  useEffect(() => {
+  useLayoutEffect(() => {
     if (!result || result.ok) return
     const wrong = form.current?.querySelector<HTMLElement>('[aria-invalid="true"]')
     const first = wrong?.matches('fieldset') ? wrong.querySelector('input') : wrong
