@@ -30,7 +30,7 @@ export function openDatabase(url: string, max = 10) {
   const sql = postgres(url, {
     max,
     connect_timeout: 5,
-    // The server gives up on a query before its reader does (see server/data/deadline.ts).
+    // The server gives up on a query before its reader does (see db/deadline.ts).
     connection: { statement_timeout: 5_000, application_name: 'floorside' },
     onnotice: () => undefined,
   })

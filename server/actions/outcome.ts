@@ -1,12 +1,17 @@
 import 'server-only'
 import { randomUUID } from 'node:crypto'
 import { unstable_rethrow } from 'next/navigation'
+import { checkActionOrigin } from '@/server/auth/origin'
 import { AppError, type ActionResult } from '@/server/contract/errors'
 import { logError } from '@/server/http/log'
 
-/** What an action did, as its form is told: errors as words and fields, unknown ones under an id. */
+/**
+ * Runs an action that came from our own pages. What it did, as its form is told: errors as words and
+ * fields, unknown ones under an id.
+ */
 export async function outcome<T>(where: string, work: () => Promise<T>): Promise<ActionResult<T>> {
   try {
+    await checkActionOrigin()
     return { ok: true, value: await work() }
   } catch (error) {
     unstable_rethrow(error)

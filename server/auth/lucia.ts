@@ -5,6 +5,7 @@ import { DrizzlePostgreSQLAdapter } from '@lucia-auth/adapter-drizzle'
 import { eq } from 'drizzle-orm'
 import { Lucia, TimeSpan } from 'lucia'
 import { database } from '@/db/client'
+import { timed } from '@/db/deadline'
 import { people } from '@/db/schema/people'
 import { signInSessions } from '@/db/schema/sign-in-sessions'
 
@@ -50,50 +51,47 @@ export function digestOf(token: string): string {
 }
 
 /** Starts a session for a person. Resolves with the token for the cookie: the only time that it is seen. */
-export async function startSession(
-  personId: string,
-  more: { gymId: string | null; userAgent: string; now?: Date },
-): Promise<string> {
-  const token = randomBytes(32).toString('base64url')
-  const now = more.now ?? new Date()
-  await lucia().createSession(
-    personId,
-    {
-      gymId: more.gymId,
-      absoluteExpiresAt: new Date(now.getTime() + ABSOLUTE_DAYS * DAY_MS),
-      userAgent: more.userAgent.slice(0, 300),
-    },
-    { sessionId: digestOf(token) },
-  )
-  return token
-}
+export const startSession = timed(
+  async (
+    personId: string,
+    more: { gymId: string | null; userAgent: string; now?: Date },
+  ): Promise<string> => {
+    const token = randomBytes(32).toString('base64url')
+    const now = more.now ?? new Date()
+    await lucia().deleteExpiredSessions()
+    await lucia().createSession(
+      personId,
+      {
+        gymId: more.gymId,
+        absoluteExpiresAt: new Date(now.getTime() + ABSOLUTE_DAYS * DAY_MS),
+        userAgent: more.userAgent.slice(0, 300),
+      },
+      { sessionId: digestOf(token) },
+    )
+    return token
+  },
+)
 
 /** Who a token stands for; null where it is unknown or has ended by idling or by its absolute limit. */
-export async function readSession(token: string, now = new Date()): Promise<SignedIn | null> {
+export const readSession = timed(async (token: string, now?: Date): Promise<SignedIn | null> => {
   const { session } = await lucia().validateSession(digestOf(token))
   if (!session) return null
-  if (session.absoluteExpiresAt.getTime() <= now.getTime()) {
+  if (session.absoluteExpiresAt.getTime() <= (now?.getTime() ?? Date.now())) {
     await lucia().invalidateSession(session.id)
     return null
   }
   return { sessionId: session.id, personId: session.userId, gymId: session.gymId }
-}
+})
 
-export async function endSession(sessionId: string): Promise<void> {
-  await lucia().invalidateSession(sessionId)
-}
+export const endSession = timed((sessionId: string): Promise<void> =>
+  lucia().invalidateSession(sessionId),
+)
 
-/** Ends every session of a person; with `except`, all but that one. */
-export async function endSessions(personId: string, except?: string): Promise<void> {
-  if (except === undefined) {
-    await lucia().invalidateUserSessions(personId)
-    return
-  }
-  for (const session of await lucia().getUserSessions(personId)) {
-    if (session.id !== except) await lucia().invalidateSession(session.id)
-  }
-}
+/** Ends every session of a person. */
+export const endSessions = timed((personId: string): Promise<void> =>
+  lucia().invalidateUserSessions(personId),
+)
 
-export async function setSessionGym(sessionId: string, gymId: string): Promise<void> {
+export const setSessionGym = timed(async (sessionId: string, gymId: string): Promise<void> => {
   await database().update(signInSessions).set({ gymId }).where(eq(signInSessions.id, sessionId))
-}
+})

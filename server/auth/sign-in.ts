@@ -1,13 +1,22 @@
 import 'server-only'
 import { eq, sql } from 'drizzle-orm'
 import type { Database } from '@/db/client'
+import { timed } from '@/db/deadline'
 import { people } from '@/db/schema/people'
 import { AppError } from '@/server/contract/errors'
 import { verifyPassword } from './passwords'
-import { clearFailures, countFailure, waitSeconds } from './throttle'
+import { forgiveTries, takeTry } from './throttle'
 import { viewerOf } from './viewer'
 
-export const WRONG_SIGN_IN = 'E-mail and password do not belong together. Check both and try again.'
+const WRONG_SIGN_IN = 'E-mail and password do not belong together. Check both and try again.'
+
+const accountOf = timed(async (db: Database, email: string) => {
+  const [person] = await db
+    .select({ id: people.id, passwordHash: people.passwordHash })
+    .from(people)
+    .where(eq(sql`lower(${people.email})`, email.trim().toLowerCase()))
+  return person
+})
 
 /**
  * Checks an e-mail and password. Resolves with the person; throws `too-many` while throttled and
@@ -19,7 +28,7 @@ export async function checkSignIn(
   input: { email: string; password: string; address: string; now: Date },
 ): Promise<{ personId: string }> {
   const { email, password, address, now } = input
-  const wait = await waitSeconds(db, email, address, now)
+  const wait = await takeTry(db, email, address, now)
   if (wait > 0) {
     throw new AppError(
       'too-many',
@@ -27,16 +36,12 @@ export async function checkSignIn(
       { retryAfterSeconds: wait },
     )
   }
-  const [person] = await db
-    .select({ id: people.id, passwordHash: people.passwordHash })
-    .from(people)
-    .where(eq(sql`lower(${people.email})`, email.trim().toLowerCase()))
+  const person = await accountOf(db, email)
   const matches = await verifyPassword(person?.passwordHash ?? null, password)
-  const isActive = person ? (await viewerOf(db, person.id, null)) !== null : false
-  if (!person || !matches || !isActive) {
-    await countFailure(db, email, address, now)
+  // Only after a right password, so that a known address costs nothing more than an unknown one.
+  if (!person || !matches || !(await viewerOf(db, person.id, null))) {
     throw new AppError('bad-input', WRONG_SIGN_IN)
   }
-  await clearFailures(db, email, address)
+  await forgiveTries(db, email, address, now)
   return { personId: person.id }
 }

@@ -1,10 +1,10 @@
 import 'server-only'
 /** Who is asking, and whether they may be where they are. Pages, actions and handlers all begin here. */
 import { and, asc, eq, isNull } from 'drizzle-orm'
-import { headers } from 'next/headers'
 import { notFound, redirect } from 'next/navigation'
 import { cache } from 'react'
 import { database, type DbOrTx } from '@/db/client'
+import { timed } from '@/db/deadline'
 import { gyms } from '@/db/schema/gyms'
 import { memberships } from '@/db/schema/memberships'
 import { people } from '@/db/schema/people'
@@ -21,40 +21,38 @@ export interface Session {
 }
 
 /** The person as a viewer of the gym they stand in, or of their first; null without an active membership. */
-export async function viewerOf(
-  db: DbOrTx,
-  personId: string,
-  gymId: string | null,
-): Promise<Viewer | null> {
-  const rows = await db
-    .select({
-      membershipId: memberships.id,
-      gymId: gyms.id,
-      roles: memberships.roles,
-      gymName: gyms.name,
-      place: gyms.place,
-      timeZone: gyms.timeZone,
-      name: people.name,
-      email: people.email,
-    })
-    .from(memberships)
-    .innerJoin(gyms, eq(gyms.id, memberships.gymId))
-    .innerJoin(people, eq(people.id, memberships.personId))
-    .where(and(eq(memberships.personId, personId), isNull(memberships.deactivatedAt)))
-    .orderBy(asc(gyms.name))
-  const here = rows.find((row) => row.gymId === gymId) ?? rows[0]
-  if (!here) return null
-  return {
-    personId,
-    membershipId: here.membershipId,
-    gymId: here.gymId,
-    roles: here.roles,
-    name: here.name,
-    email: here.email,
-    gym: { name: here.gymName, place: here.place, timeZone: here.timeZone },
-    gyms: rows.map((row) => ({ gymId: row.gymId, name: row.gymName })),
-  }
-}
+export const viewerOf = timed(
+  async (db: DbOrTx, personId: string, gymId: string | null): Promise<Viewer | null> => {
+    const rows = await db
+      .select({
+        membershipId: memberships.id,
+        gymId: gyms.id,
+        roles: memberships.roles,
+        gymName: gyms.name,
+        place: gyms.place,
+        timeZone: gyms.timeZone,
+        name: people.name,
+        email: people.email,
+      })
+      .from(memberships)
+      .innerJoin(gyms, eq(gyms.id, memberships.gymId))
+      .innerJoin(people, eq(people.id, memberships.personId))
+      .where(and(eq(memberships.personId, personId), isNull(memberships.deactivatedAt)))
+      .orderBy(asc(gyms.name))
+    const here = rows.find((row) => row.gymId === gymId) ?? rows[0]
+    if (!here) return null
+    return {
+      personId,
+      membershipId: here.membershipId,
+      gymId: here.gymId,
+      roles: here.roles,
+      name: here.name,
+      email: here.email,
+      gym: { name: here.gymName, place: here.place, timeZone: here.timeZone },
+      gyms: rows.map((row) => ({ gymId: row.gymId, name: row.gymName })),
+    }
+  },
+)
 
 /** The session that a token stands for; null where it has ended or the person is active in no gym. */
 export async function sessionOf(token: string | null): Promise<Session | null> {
@@ -97,16 +95,6 @@ export function landingPath(viewer: Viewer): string {
   if (viewer.roles.includes('coach')) return paths.board()
   if (viewer.roles.includes('member')) return paths.today()
   return paths.gym()
-}
-
-/**
- * The network address that throttles count by: the last entry of the forwarded header. A reverse proxy
- * adds it; without one Next puts the socket's address there. Whoever forges it without a proxy only
- * loses the help of this count: the one per account stands.
- */
-export async function networkAddress(): Promise<string> {
-  const forwarded = (await headers()).get('x-forwarded-for')
-  return forwarded?.split(',').at(-1)?.trim() || 'unknown'
 }
 
 /** For pages: what a data function refuses as `not-found` becomes the page's own 404. */

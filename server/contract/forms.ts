@@ -1,24 +1,29 @@
 /** What forms send. Parsed once, at the edge. */
 import { z } from 'zod'
-import { HEALTH_QUESTIONS, type HealthAnswers } from '../engine/fit/screening'
+import { HEALTH_LIMITS, HEALTH_QUESTIONS, type HealthAnswers } from '../engine/fit/screening'
 import { PASSWORD_MOST, passwordProblem } from './passwords'
+import { storable } from './text'
+
+/** A character outside the first plane counts twice in a string's length, once in a password's. */
+const LONGEST_PASSWORD = PASSWORD_MOST * 2
 
 export const signInInput = z.object({
   email: z
     .string()
     .trim()
     .min(1, 'Give your e-mail address.')
-    .max(254, 'That is longer than any e-mail address.'),
+    .max(254, 'That is longer than any e-mail address.')
+    .transform(storable),
   password: z
     .string()
     .min(1, 'Give your password.')
-    .max(PASSWORD_MOST, 'That is longer than any password here.'),
+    .max(LONGEST_PASSWORD, 'That is longer than any password here.'),
   next: z.string().max(500).optional(),
 })
 
 export const changePasswordInput = z
   .object({
-    current: z.string().min(1, 'Give your present password.').max(PASSWORD_MOST),
+    current: z.string().min(1, 'Give your present password.').max(LONGEST_PASSWORD),
     wanted: z.string().superRefine((password, context) => {
       const problem = passwordProblem(password)
       if (problem) context.addIssue({ code: 'custom', message: problem })
@@ -41,10 +46,18 @@ export const healthInput = z.object({
         ) as HealthAnswers,
     ),
   cleared: z.boolean(),
-  limits: z.array(z.string().max(60)).max(20),
+  limits: z.array(z.enum(HEALTH_LIMITS.map((one) => one.limit))).max(HEALTH_LIMITS.length),
 })
 
-export const kitInput = z.record(z.string().min(1).max(60), z.number().int().min(0).max(20))
+export const kitInput = z
+  .record(
+    z
+      .string()
+      .max(60)
+      .regex(/^[\p{L}\p{N}][\p{L}\p{N} -]*$/u),
+    z.number().int().min(0).max(20),
+  )
+  .refine((kit) => Object.keys(kit).length <= 100, 'That is more kit than fits here.')
 
 /** Only a path of this product may follow a sign-in: `/…`, never `//…` nor another address. */
 export function safeNext(next: string | null | undefined): string | null {

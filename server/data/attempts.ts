@@ -1,6 +1,6 @@
 import 'server-only'
 /** Recording and reading attempts. */
-import { and, asc, desc, eq, inArray, lt, sql } from 'drizzle-orm'
+import { and, asc, desc, eq, inArray, sql } from 'drizzle-orm'
 import { v7 } from 'uuid'
 import type { DbOrTx } from '@/db/client'
 import { timed } from '@/db/deadline'
@@ -13,6 +13,7 @@ import { memberships } from '@/db/schema/memberships'
 import { people } from '@/db/schema/people'
 import { scheduledClasses } from '@/db/schema/scheduled-classes'
 import type { AttemptDto, RecordEventsInput, RecordEventsResult } from '@/server/contract/attempts'
+import type { HealthStanding } from '@/server/contract/classes'
 import { AppError } from '@/server/contract/errors'
 import type { Viewer } from '@/server/contract/viewer'
 import type { ClassEvent } from '@/server/engine/tally/events'
@@ -111,26 +112,29 @@ async function begin(
   if (!scheduled || !viewer.roles.includes('member')) throw notThere()
   if (scheduled.versionId !== input.versionId) {
     // The class was published anew meanwhile: an attempt keeps the version that it began on.
-    const [version] = await tx
-      .select({ id: classVersions.id })
+    const versions = await tx
+      .select({ id: classVersions.id, classId: classVersions.classId })
       .from(classVersions)
-      .where(and(eq(classVersions.id, input.versionId), eq(classVersions.gymId, viewer.gymId)))
-    const [current] = await tx
-      .select({ classId: classVersions.classId })
-      .from(classVersions)
-      .where(eq(classVersions.id, scheduled.versionId))
-    const [asked] = version
-      ? await tx
-          .select({ classId: classVersions.classId })
-          .from(classVersions)
-          .where(eq(classVersions.id, version.id))
-      : []
-    if (!asked || asked.classId !== current?.classId) {
+      .where(
+        and(
+          inArray(classVersions.id, [input.versionId, scheduled.versionId]),
+          eq(classVersions.gymId, viewer.gymId),
+        ),
+      )
+    const classOf = (id: string) => versions.find((version) => version.id === id)?.classId
+    const asked = classOf(input.versionId)
+    if (asked === undefined || asked !== classOf(scheduled.versionId)) {
       throw new AppError('conflict', 'That is not a version of this class.')
     }
   }
-  const health = await getHealth(viewer, { now }, tx)
-  if (health.standing !== 'clear' || health.consentMissing) {
+  const first =
+    input.events.find((event) => event.type === 'started') ?? [...input.events].sort(byOrder)[0]
+  const begunAt = saidAt(first?.wallMs ?? now.getTime(), now)
+  // Begun without a network, a class may arrive after the answers ran out: those of then count as well.
+  const mayPlay =
+    isClear(await getHealth(viewer, { now }, tx)) ||
+    isClear(await getHealth(viewer, { now: begunAt, givenBy: begunAt }, tx))
+  if (!mayPlay) {
     throw new AppError(
       'not-allowed',
       'The health questions come first. Answer them, then start the class.',
@@ -144,7 +148,7 @@ async function begin(
       membershipId: viewer.membershipId,
       scheduledClassId: scheduled.id,
       versionId: input.versionId,
-      late: startedAt(input, now) > scheduled.closesAt,
+      late: begunAt > scheduled.closesAt,
       todayNote: input.todayNote?.trim() || null,
       createdAt: now,
     })
@@ -157,10 +161,17 @@ async function begin(
   if (made?.membershipId !== viewer.membershipId) throw notThere()
 }
 
-/** When the member began, by their own clock: a class that was played without a network comes later. Never after `now`. */
-function startedAt(input: RecordEventsInput, now: Date): Date {
-  const started = input.events.find((event) => event.type === 'started')
-  return started ? new Date(Math.min(started.wallMs, now.getTime())) : now
+/** For this long a class may wait on a member's computer to be sent. */
+const MOST_UNSENT_MS = 60 * 86_400_000
+
+/** An instant that a member's computer names, where it can be right; else that of receipt. */
+function saidAt(wallMs: number, now: Date): Date {
+  const isPlausible = wallMs <= now.getTime() && wallMs >= now.getTime() - MOST_UNSENT_MS
+  return isPlausible ? new Date(wallMs) : now
+}
+
+function isClear(health: HealthStanding): boolean {
+  return health.standing === 'clear' && !health.consentMissing
 }
 
 /** What beside the events follows from new ones: the attempt's dates and state, holds, word to the boards. */
@@ -175,8 +186,7 @@ async function note(
   const finished = events.findLast((event) => event.type === 'finished')
   const turning = events.findLast((event) => STATE_AFTER[event.type] !== undefined)
   const state = turning ? STATE_AFTER[turning.type] : undefined
-  // A member's clock may be anything; what lists show is never later than the server's.
-  const said = (wallMs: number) => new Date(Math.min(wallMs, now.getTime())).toISOString()
+  const said = (wallMs: number) => saidAt(wallMs, now).toISOString()
   await tx
     .update(attempts)
     .set({
@@ -290,7 +300,7 @@ export interface OwnAttempt {
 
 const ATTEMPTS_A_PAGE = 50
 
-/** The viewer's own attempts, latest first, 50 at a time; `before` is the id of the last one seen (ids are in order of time). */
+/** The viewer's own attempts, latest first, 50 at a time; `before` is the id of the last one seen. */
 export const listOwnAttempts = timed(
   async (
     viewer: Viewer,
@@ -312,10 +322,12 @@ export const listOwnAttempts = timed(
       .where(
         and(
           eq(attempts.membershipId, viewer.membershipId),
-          params.before === null ? undefined : lt(attempts.id, params.before),
+          params.before === null
+            ? undefined
+            : sql`(${attempts.createdAt}, ${attempts.id}) < (select seen.created_at, seen.id from ${attempts} seen where seen.id = ${params.before} and seen.membership_id = ${viewer.membershipId})`,
         ),
       )
-      .orderBy(desc(attempts.id))
+      .orderBy(desc(attempts.createdAt), desc(attempts.id))
       .limit(ATTEMPTS_A_PAGE + 1)
     return {
       attempts: rows.slice(0, ATTEMPTS_A_PAGE).map(({ attempt, title, day, rpe }) => ({

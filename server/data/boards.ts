@@ -2,6 +2,7 @@ import 'server-only'
 /** The coach's board. Coaches of the gym only: a board holds health data. */
 import { and, asc, eq, inArray, sql } from 'drizzle-orm'
 import type { DbOrTx } from '@/db/client'
+import { timed } from '@/db/deadline'
 import { attemptEvents } from '@/db/schema/attempt-events'
 import { attempts } from '@/db/schema/attempts'
 import { gyms } from '@/db/schema/gyms'
@@ -15,8 +16,7 @@ import { noteForCoach } from '@/server/engine/fit/screening'
 import { forecast, TIRING } from '@/server/engine/pace/forecast'
 import type { ClassEvent } from '@/server/engine/tally/events'
 import { fold } from '@/server/engine/tally/fold'
-import { getScheduledClass } from './classes'
-import { timed } from './deadline'
+import { getScheduledClass, versionsOf } from './classes'
 import { standingInputs } from './health'
 
 type AttemptRow = typeof attempts.$inferSelect
@@ -45,6 +45,12 @@ export const getBoard = timed(
       db,
       shown.map((attempt) => attempt.id),
     )
+    const olderVersions = await versionsOf(
+      db,
+      shown
+        .map((attempt) => attempt.versionId)
+        .filter((versionId) => versionId !== scheduledClass.versionId),
+    )
     const notes = await healthNotes(
       db,
       viewer.gymId,
@@ -65,7 +71,10 @@ export const getBoard = timed(
         lastEventAt: attempt?.lastEventAt?.toISOString() ?? null,
         todayNote: attempt?.todayNote ?? null,
         healthNote: notes.get(membershipId) ?? null,
-        tally: attempt ? fold(version, events.get(attempt.id) ?? []) : null,
+        // Each by the version that it was done on, which need not be the one scheduled now.
+        tally: attempt
+          ? fold(olderVersions.get(attempt.versionId) ?? version, events.get(attempt.id) ?? [])
+          : null,
       }
     })
     return {

@@ -18,6 +18,7 @@ import {
   type SQL,
 } from 'drizzle-orm'
 import type { DbOrTx } from '@/db/client'
+import { timed } from '@/db/deadline'
 import { attempts } from '@/db/schema/attempts'
 import { classVersions } from '@/db/schema/class-versions'
 import { memberships } from '@/db/schema/memberships'
@@ -29,14 +30,13 @@ import type { Viewer } from '@/server/contract/viewer'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import { compile, realLengthMs } from '@/server/engine/timeline/compile'
 import type { Timeline } from '@/server/engine/timeline/types'
-import { timed } from './deadline'
 
 /** The gym's local date at an instant, yyyy-mm-dd. */
 export function localDay(timeZone: string, at: Date): string {
   return format(new TZDate(at.getTime(), timeZone), 'yyyy-MM-dd')
 }
 
-/** What of the gym's schedule the viewer may see: coaches and owners all of it, members their group's. */
+/** What of the gym's schedule the viewer may see: coaches and owners all of it, members their group's and what they have done. */
 export function visibleTo(viewer: Viewer): SQL | undefined {
   const mine = eq(scheduledClasses.gymId, viewer.gymId)
   if (viewer.roles.includes('coach') || viewer.roles.includes('owner')) return mine
@@ -49,9 +49,33 @@ export function visibleTo(viewer: Viewer): SQL | undefined {
         scheduledClasses.group,
         sql`(select ${memberships.group} from ${memberships} where ${memberships.id} = ${viewer.membershipId})`,
       ),
+      sql`exists (select 1 from ${attempts} where ${attempts.scheduledClassId} = ${scheduledClasses.id} and ${attempts.membershipId} = ${viewer.membershipId})`,
     ),
   )
 }
+
+/** Which of the person's own gyms a class belongs to; null where it is none of theirs. */
+export const ownGymOf = timed(
+  async (
+    viewer: Viewer,
+    params: { scheduledClassId: string },
+    db: DbOrTx,
+  ): Promise<string | null> => {
+    const [row] = await db
+      .select({ gymId: scheduledClasses.gymId })
+      .from(scheduledClasses)
+      .where(
+        and(
+          eq(scheduledClasses.id, params.scheduledClassId),
+          inArray(
+            scheduledClasses.gymId,
+            viewer.gyms.map((gym) => gym.gymId),
+          ),
+        ),
+      )
+    return row?.gymId ?? null
+  },
+)
 
 type Row = Awaited<ReturnType<typeof selectClasses>>[number]
 
@@ -64,8 +88,11 @@ function selectClasses(db: DbOrTx, where: SQL | undefined) {
     .$dynamic()
 }
 
-/** Titles and lengths by version; a list of a year's classes holds only a few versions. */
-async function versionsOf(db: DbOrTx, ids: string[]): Promise<Map<string, PublishedVersion>> {
+/** Published versions by id; a list of a year's classes holds only a few. */
+export async function versionsOf(
+  db: DbOrTx,
+  ids: string[],
+): Promise<Map<string, PublishedVersion>> {
   if (ids.length === 0) return new Map()
   const rows = await db
     .select({ id: classVersions.id, content: classVersions.content })

@@ -1,8 +1,9 @@
 import 'server-only'
 /** Health answers, and the easier options that stay after 'this hurts'. Seen by the member and the gym's coaches only. */
-import { and, desc, eq, inArray, isNull, or } from 'drizzle-orm'
+import { and, desc, eq, inArray, isNull, lte, or, sql } from 'drizzle-orm'
 import { v7 } from 'uuid'
 import type { DbOrTx } from '@/db/client'
+import { timed } from '@/db/deadline'
 import { auditEntries } from '@/db/schema/audit-entries'
 import { gyms } from '@/db/schema/gyms'
 import { healthAnswers } from '@/db/schema/health-answers'
@@ -14,20 +15,25 @@ import { AppError } from '@/server/contract/errors'
 import type { Viewer } from '@/server/contract/viewer'
 import { standing, type HealthAnswers, type StandingInput } from '@/server/engine/fit/screening'
 import type { HurtPlace } from '@/server/engine/tally/events'
-import { timed } from './deadline'
 
-/** The latest answers of members, as the rules take them. */
+/** The latest answers of members, as the rules take them; with `givenBy`, the latest of then. */
 export async function standingInputs(
   db: DbOrTx,
   membershipIds: string[],
   intervalDays: number,
   now: Date,
+  givenBy?: Date,
 ): Promise<Map<string, StandingInput>> {
   if (membershipIds.length === 0) return new Map()
   const rows = await db
     .selectDistinctOn([healthAnswers.membershipId])
     .from(healthAnswers)
-    .where(inArray(healthAnswers.membershipId, membershipIds))
+    .where(
+      and(
+        inArray(healthAnswers.membershipId, membershipIds),
+        givenBy ? lte(healthAnswers.createdAt, givenBy) : undefined,
+      ),
+    )
     .orderBy(healthAnswers.membershipId, desc(healthAnswers.createdAt))
   return new Map(
     rows.map((row) => [
@@ -44,9 +50,13 @@ export async function standingInputs(
   )
 }
 
-/** How the viewer's own answers stand. */
+/** How the viewer's own answers stand at `now`; with `givenBy`, by the answers that there were then. */
 export const getHealth = timed(
-  async (viewer: Viewer, params: { now: Date }, db: DbOrTx): Promise<HealthStanding> => {
+  async (
+    viewer: Viewer,
+    params: { now: Date; givenBy?: Date },
+    db: DbOrTx,
+  ): Promise<HealthStanding> => {
     const [row] = await db
       .select({
         intervalDays: gyms.healthIntervalDays,
@@ -58,7 +68,13 @@ export const getHealth = timed(
       .innerJoin(people, eq(people.id, memberships.personId))
       .where(eq(memberships.id, viewer.membershipId))
     if (!row) throw new AppError('not-found', 'You are not a member of this gym any more.')
-    const inputs = await standingInputs(db, [viewer.membershipId], row.intervalDays, params.now)
+    const inputs = await standingInputs(
+      db,
+      [viewer.membershipId],
+      row.intervalDays,
+      params.now,
+      params.givenBy,
+    )
     const input = inputs.get(viewer.membershipId)
     const consentMissing = !row.adult && row.consentAt === null
     const iso = (ms: number | null | undefined) =>
@@ -156,11 +172,14 @@ export const clearHold = timed(
         .where(eq(memberships.gymId, viewer.gymId)),
     )
     if (params.as === 'coach' && !viewer.roles.includes('coach')) throw notThere()
+    const at = sql`${params.now.toISOString()}::timestamptz`
     await db.transaction(async (tx) => {
       const changed = await tx
         .update(hurtHolds)
         .set(
-          params.as === 'coach' ? { coachClearedAt: params.now } : { memberClearedAt: params.now },
+          params.as === 'coach'
+            ? { coachClearedAt: sql`coalesce(${hurtHolds.coachClearedAt}, ${at})` }
+            : { memberClearedAt: sql`coalesce(${hurtHolds.memberClearedAt}, ${at})` },
         )
         .where(and(eq(hurtHolds.id, params.holdId), params.as === 'coach' ? ofGym : own))
         .returning({ id: hurtHolds.id })

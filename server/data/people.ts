@@ -3,6 +3,7 @@ import 'server-only'
 import { and, asc, eq, sql } from 'drizzle-orm'
 import { v7 } from 'uuid'
 import type { DbOrTx } from '@/db/client'
+import { timed } from '@/db/deadline'
 import { auditEntries } from '@/db/schema/audit-entries'
 import { gyms } from '@/db/schema/gyms'
 import { memberships } from '@/db/schema/memberships'
@@ -10,7 +11,6 @@ import { people } from '@/db/schema/people'
 import { signInSessions } from '@/db/schema/sign-in-sessions'
 import { AppError } from '@/server/contract/errors'
 import type { Role, Viewer } from '@/server/contract/viewer'
-import { timed } from './deadline'
 
 export interface GymPerson {
   membershipId: string
@@ -85,17 +85,6 @@ export const saveKit = timed(
       .update(memberships)
       .set({ kit: params.kit })
       .where(eq(memberships.id, viewer.membershipId))
-  },
-)
-
-/** The hash of the viewer's own password, to check the old one against. */
-export const ownPasswordHash = timed(
-  async (viewer: Viewer, _params: Record<string, never>, db: DbOrTx): Promise<string | null> => {
-    const [row] = await db
-      .select({ passwordHash: people.passwordHash })
-      .from(people)
-      .where(eq(people.id, viewer.personId))
-    return row?.passwordHash ?? null
   },
 )
 

@@ -1,6 +1,7 @@
 import 'server-only'
 import { and, desc, eq } from 'drizzle-orm'
 import type { DbOrTx } from '@/db/client'
+import { timed } from '@/db/deadline'
 import { attempts } from '@/db/schema/attempts'
 import { classVersions } from '@/db/schema/class-versions'
 import { gyms } from '@/db/schema/gyms'
@@ -12,7 +13,6 @@ import { fold } from '@/server/engine/tally/fold'
 import type { AttemptTally } from '@/server/engine/tally/types'
 import { eventsOf, openAttemptOf } from './attempts'
 import { getScheduledClass } from './classes'
-import { timed } from './deadline'
 import { getHealth, openHolds } from './health'
 
 /**

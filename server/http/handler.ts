@@ -4,8 +4,10 @@ import { randomUUID } from 'node:crypto'
 import { unstable_rethrow } from 'next/navigation'
 import type { z } from 'zod'
 import { AppError, ERROR_STATUS, type ErrorBody } from '@/server/contract/errors'
+import { checkOrigin } from '@/server/auth/origin'
 import { currentSession, type Session } from '@/server/auth/viewer'
 import { fieldMessages } from '@/server/contract/forms'
+import { storable } from '@/server/contract/text'
 import { logError } from './log'
 
 const MOST_BODY_BYTES = 1_000_000
@@ -22,7 +24,10 @@ export function handler<P extends Record<string, string>>(
 ): (request: Request, context: Context<P>) => Promise<Response> {
   return async (request, context) => {
     try {
-      if (request.method !== 'GET' && request.method !== 'HEAD') checkOrigin(request)
+      if (request.method !== 'GET' && request.method !== 'HEAD') {
+        checkOrigin(request.headers)
+        checkJson(request)
+      }
       const session = await currentSession()
       if (!session)
         throw new AppError('signed-out', 'You are signed out. Sign in again; nothing is lost.')
@@ -61,19 +66,7 @@ export function errorResponse(error: unknown, where: string): Response {
   return Response.json(body, { status: 500, headers: { 'cache-control': 'no-store' } })
 }
 
-/** A request that changes something must come from our own pages and be JSON. */
-function checkOrigin(request: Request): void {
-  const site = request.headers.get('sec-fetch-site')
-  const origin = request.headers.get('origin')
-  const host = request.headers.get('host')
-  const own = process.env.APP_ORIGIN
-  const isOwn =
-    site === 'same-origin' ||
-    (site === null &&
-      origin !== null &&
-      (origin === own || (URL.canParse(origin) && new URL(origin).host === host)))
-  if (!isOwn)
-    throw new AppError('not-allowed', 'This request did not come from Floorside’s own pages.')
+function checkJson(request: Request): void {
   const type = request.headers.get('content-type')?.split(';')[0]?.trim().toLowerCase()
   if (type !== 'application/json')
     throw new AppError('bad-input', 'Send JSON (content-type application/json).')
@@ -84,16 +77,12 @@ export async function readJson<Schema extends z.ZodType>(
   request: Request,
   schema: Schema,
 ): Promise<z.output<Schema>> {
-  const tooLarge = new AppError(
-    'too-large',
-    'That is more than one request may carry (1 MB). Send it in parts.',
-  )
-  if (Number(request.headers.get('content-length') ?? 0) > MOST_BODY_BYTES) throw tooLarge
-  const text = await request.text()
-  if (Buffer.byteLength(text) > MOST_BODY_BYTES) throw tooLarge
   let json: unknown
+  const text = await readBody(request)
   try {
-    json = JSON.parse(text)
+    json = JSON.parse(text, (_key, value: unknown) =>
+      typeof value === 'string' ? storable(value) : value,
+    )
   } catch {
     throw new AppError('bad-input', 'The request is not JSON.')
   }
@@ -104,6 +93,27 @@ export async function readJson<Schema extends z.ZodType>(
     })
   }
   return parsed.data
+}
+
+/** The body as text, read no further than it may be long: a length that was promised proves nothing. */
+async function readBody(request: Request): Promise<string> {
+  const chunks: Uint8Array[] = []
+  let bytes = 0
+  const reader = request.body?.getReader()
+  for (;;) {
+    const next = await reader?.read()
+    if (!next || next.done) break
+    bytes += next.value.byteLength
+    if (bytes > MOST_BODY_BYTES) {
+      await reader?.cancel()
+      throw new AppError(
+        'too-large',
+        'That is more than one request may carry (1 MB). Send it in parts.',
+      )
+    }
+    chunks.push(next.value)
+  }
+  return Buffer.concat(chunks).toString('utf8')
 }
 
 /** A JSON answer that no cache keeps. */

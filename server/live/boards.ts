@@ -1,7 +1,8 @@
 import 'server-only'
 /**
  * Tells readers of boards that one changed. Fed by LISTEN/NOTIFY, which carries ids only; what may be
- * missed while the database was away is read again at each new LISTEN and every ten seconds.
+ * missed while the database was away is read again at each new LISTEN and every ten seconds, and every
+ * second once a reading has failed: LISTEN itself may be back long after the database is.
  */
 import type { LiveBoardChange } from '@/server/contract/board'
 
@@ -81,7 +82,7 @@ export class BoardFeed {
       this.gathering = false
       this.ports.revisions(ids).then(
         (changes) => changes.forEach((change) => this.tellAll(change)),
-        () => undefined,
+        () => this.ports.setTimer(() => this.gather(ids), RETRY_MS),
       )
     }, GATHER_MS)
   }

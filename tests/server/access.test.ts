@@ -21,6 +21,7 @@ import { makeGym, NOW, stamped, type TestGym } from '../support/gym'
 
 let test: TestDatabase
 let token: string | null = null
+let site = 'same-origin'
 
 vi.mock('@/db/client', async (original) => ({
   ...(await original<object>()),
@@ -32,7 +33,7 @@ vi.mock('next/headers', () => ({
     get: () => (token === null ? undefined : { name: 'floorside', value: token }),
     set: () => undefined,
   }),
-  headers: async () => new Headers(),
+  headers: async () => new Headers({ 'sec-fetch-site': site, 'x-forwarded-for': '192.0.2.1' }),
 }))
 vi.mock('next/cache', () => ({ refresh: () => undefined }))
 // Fonts and styles are the bundler's; a page's own modules are what is asked here.
@@ -164,12 +165,12 @@ describe('pages', () => {
     const { default: page } = (await import(
       /* @vite-ignore */ `../../${pageFiles.get(address)}`
     )) as {
-      default: (props: object) => Promise<unknown>
+      default: (props: object) => unknown
     }
-    const outcome = await page({
-      params: Promise.resolve(ids()),
-      searchParams: Promise.resolve({}),
-    }).then(() => 'ok' as Outcome, thrown)
+    const props = { params: Promise.resolve(ids()), searchParams: Promise.resolve({}) }
+    const outcome = await Promise.resolve()
+      .then(() => page(props))
+      .then(() => 'ok' as Outcome, thrown)
     expect(outcome).toBe(expected)
   })
 })
@@ -280,5 +281,27 @@ describe('actions', () => {
       thrown,
     )
     expect(outcome).toBe(expected)
+  })
+})
+
+describe('actions from another site', () => {
+  it.each(Object.keys(ACTIONS))('%s does nothing', async (what) => {
+    token = tokens.get('member') ?? null
+    site = 'cross-site'
+    try {
+      const actions = (await import(
+        /* @vite-ignore */ `../../${actionFiles.get(what) ?? ''}`
+      )) as Record<string, (...args: unknown[]) => Promise<{ ok: boolean; message?: string }>>
+      const name = what.split('/')[1] ?? ''
+      const form = formFor(what)
+      const call = name === 'switchGym' ? actions[name]?.(form) : actions[name]?.(null, form)
+      const message = await call?.then(
+        (result) => (result.ok ? 'done' : result.message),
+        (error: unknown) => (error instanceof AppError ? error.message : 'something else'),
+      )
+      expect(message).toMatch(/own pages/)
+    } finally {
+      site = 'same-origin'
+    }
   })
 })

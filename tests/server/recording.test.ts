@@ -5,14 +5,16 @@ import { attemptEvents } from '@/db/schema/attempt-events'
 import { attempts } from '@/db/schema/attempts'
 import { classVersions } from '@/db/schema/class-versions'
 import { hurtHolds } from '@/db/schema/hurt-holds'
+import { memberships } from '@/db/schema/memberships'
 import { recordEventsInput, uuidV7Schema, type RecordEventsInput } from '@/server/contract/attempts'
 import type { Viewer } from '@/server/contract/viewer'
-import { getAttempt, recordEvents } from '@/server/data/attempts'
+import { getAttempt, listOwnAttempts, recordEvents } from '@/server/data/attempts'
 import { getBoard } from '@/server/data/boards'
+import { saveHealth } from '@/server/data/health'
 import { getPlayerData } from '@/server/data/player'
 import type { ClassEvent } from '@/server/engine/tally/events'
 import { makeTestDatabase, type TestDatabase } from '../support/database'
-import { makeGym, NOW, stamped, type TestGym } from '../support/gym'
+import { answersWith, makeGym, NOW, stamped, type TestGym } from '../support/gym'
 
 let test: TestDatabase
 let gym: TestGym
@@ -152,6 +154,105 @@ describe('recording', () => {
     expect(await rejection(record(unasked, v7(), input(started())))).toBe('not-allowed')
     const breathless = await gym.person('Breathless', ['member'], { answered: ['breathless'] })
     expect(await rejection(record(breathless, v7(), input(started())))).toBe('not-allowed')
+
+    const attemptId = v7()
+    const later = await gym.person('Answers anew', ['member'])
+    const events = started()
+    await record(later, attemptId, input(events.slice(0, 1)))
+    await saveHealth(
+      later,
+      { answers: answersWith('chest-pain'), cleared: false, limits: [], now: NOW },
+      test.db,
+    )
+    expect((await record(later, attemptId, input(events))).stored).toHaveLength(3)
+  })
+
+  it('takes a class that was begun while the answers were good and is sent after they ran out', async () => {
+    const away = await gym.person('Away', ['member'])
+    // Answered a day before; good for 90 days (the gym's setting).
+    const after = new Date(NOW.getTime() + 100 * 86_400_000)
+    const events = started().map((event) => ({
+      ...event,
+      wallMs: after.getTime() - 20 * 86_400_000,
+    }))
+    const sent = { attemptId: v7(), input: input(events), now: after }
+    expect((await recordEvents(away, sent, test.db)).stored).toHaveLength(3)
+    const begunToday = started().map((event) => ({ ...event, wallMs: after.getTime() }))
+    expect(
+      await rejection(
+        recordEvents(away, { attemptId: v7(), input: input(begunToday), now: after }, test.db),
+      ),
+    ).toBe('not-allowed')
+  })
+
+  it('stores all or nothing of a request that is cut, and all of it when it comes again', async () => {
+    const attemptId = v7()
+    const events = started()
+    const cut = test.db.transaction(async (tx) => {
+      await recordEvents(member, { attemptId, input: input(events), now: NOW }, tx)
+      throw new Error('the process died before the commit')
+    })
+    await expect(cut).rejects.toThrow('died')
+    expect(await storedIds(attemptId)).toEqual([])
+    // The answer is lost after the commit: the client knows nothing and sends again.
+    await record(member, attemptId, input(events))
+    await record(member, attemptId, input(events))
+    expect(await storedIds(attemptId)).toHaveLength(3)
+  })
+
+  it('keeps a member’s own attempts in their reach after they changed groups', async () => {
+    const evening = await makeGym(test.db, 'Gym with groups', { group: 'Evening' })
+    const moved = await evening.person('Moved', ['member'], { group: 'Evening' })
+    const attemptId = v7()
+    await recordEvents(
+      moved,
+      {
+        attemptId,
+        now: NOW,
+        input: {
+          scheduledClassId: evening.scheduledClassId,
+          versionId: evening.versionId,
+          events: started(evening.versionId),
+        },
+      },
+      test.db,
+    )
+    await test.db
+      .update(memberships)
+      .set({ group: 'Morning' })
+      .where(eq(memberships.id, moved.membershipId))
+    expect((await getAttempt(moved, { attemptId }, test.db)).tally.state).toBe('in-class')
+    const stranger = await evening.person('Of the morning', ['member'], { group: 'Morning' })
+    const params = { scheduledClassId: evening.scheduledClassId, now: NOW }
+    expect(await rejection(getPlayerData(stranger, params, test.db))).toBe('not-found')
+  })
+
+  it('lists one’s own attempts by when they were recorded, each on one page', async () => {
+    const busy = await gym.person('Busy', ['member'])
+    const ids: string[] = []
+    for (let at = 0; at < 53; at += 1) {
+      // A computer whose clock is wrong makes ids out of order.
+      const attemptId = v7({ msecs: NOW.getTime() - at * 1_000 })
+      ids.unshift(attemptId)
+      await test.db.insert(attempts).values({
+        id: attemptId,
+        gymId: gym.gymId,
+        membershipId: busy.membershipId,
+        scheduledClassId: gym.scheduledClassId,
+        versionId: gym.versionId,
+        createdAt: new Date(NOW.getTime() + Math.floor(at / 3)),
+      })
+    }
+    const first = await listOwnAttempts(busy, { before: null }, test.db)
+    const before = first.attempts.at(-1)?.attemptId ?? null
+    const second = await listOwnAttempts(busy, { before }, test.db)
+    const seen = [...first.attempts, ...second.attempts].map((one) => one.attemptId)
+    expect(first.more).toBe(true)
+    expect(second.more).toBe(false)
+    expect(new Set(seen)).toEqual(new Set(ids))
+    expect(seen).toHaveLength(53)
+    expect(seen.slice(0, 2).every((id) => ids.slice(0, 2).includes(id))).toBe(true)
+    expect((await listOwnAttempts(member, { before }, test.db)).attempts).toEqual([])
   })
 
   it('keeps events from the future and from a clock that went back, in the order of their seq', async () => {
@@ -166,16 +267,17 @@ describe('recording', () => {
     expect(Date.parse(attempt.lastEventAt ?? '')).toBe(NOW.getTime())
   })
 
-  it('marks an attempt that begins after the window as late', async () => {
+  it.each([
+    ['begun in the window without a network, sent after it', '2026-12-01T12:00:00Z', false],
+    ['begun after the window', '2026-12-01T22:30:00Z', true],
+    ['begun by a clock that cannot be right, sent after the window', '1970-01-01T00:00:00Z', true],
+    ['begun by a clock that runs ahead, sent after the window', '2026-12-03T00:00:00Z', true],
+  ])('marks only what begins after the window as late: %s', async (_name, begun, late) => {
+    const attemptId = v7()
+    const events = started().map((event) => ({ ...event, wallMs: Date.parse(begun) }))
     const now = new Date('2026-12-01T23:00:00Z')
-    const sent = async (events: ClassEvent[]) => {
-      const attemptId = v7()
-      await recordEvents(member, { attemptId, input: input(events), now }, test.db)
-      return (await getAttempt(member, { attemptId }, test.db)).late
-    }
-    expect(await sent(started().map((event) => ({ ...event, wallMs: now.getTime() })))).toBe(true)
-    // Played in the window without a network, and sent an hour after it.
-    expect(await sent(started())).toBe(false)
+    await recordEvents(member, { attemptId, input: input(events), now }, test.db)
+    expect((await getAttempt(member, { attemptId }, test.db)).late).toBe(late)
   })
 
   it('raises a hold for every hurt, once', async () => {

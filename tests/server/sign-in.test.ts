@@ -3,6 +3,7 @@ import { eq } from 'drizzle-orm'
 import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest'
 import { memberships } from '@/db/schema/memberships'
 import { signInSessions } from '@/db/schema/sign-in-sessions'
+import { signInThrottles } from '@/db/schema/sign-in-throttles'
 import { AppError } from '@/server/contract/errors'
 import { safeNext } from '@/server/contract/forms'
 import { passwordProblem } from '@/server/contract/passwords'
@@ -109,6 +110,52 @@ describe('sign-in', () => {
     expect(await signIn(viewer.email, PASSWORD, { now: at(7) })).toEqual({
       personId: viewer.personId,
     })
+  })
+
+  it('lets no more guesses through when they all come at once', async () => {
+    const viewer = await somebody('All at once')
+    const tries = await Promise.all(
+      Array.from({ length: 40 }, (_, at) =>
+        refusal(signIn(viewer.email, `guess ${at}`, { address: '192.0.2.40' })),
+      ),
+    )
+    const codes = tries.map((one) => (one instanceof Error ? one : (one as { code: string }).code))
+    expect(codes.filter((code) => code === 'bad-input')).toHaveLength(3)
+    expect(codes.filter((code) => code === 'too-many')).toHaveLength(37)
+  })
+
+  it('forgives what came before a right password, for the account and not for the address', async () => {
+    const viewer = await somebody('Forgetful')
+    const address = '198.51.100.20'
+    for (let round = 0; round < 8; round += 1) {
+      const now = new Date(NOW.getTime() + round * 60_000)
+      for (let tries = 0; tries < 2; tries += 1)
+        await refusal(signIn(viewer.email, 'wrong', { address, now }))
+      expect(await signIn(viewer.email, PASSWORD, { address, now })).toBeTruthy()
+    }
+    const rows = await test.db.select().from(signInThrottles)
+    const failures = (kind: string) =>
+      rows.filter((row) => row.key.startsWith(kind)).map((row) => row.failures)
+    expect(failures('address:')).toContain(16)
+    expect(failures('address:')).not.toContain(24)
+    // Two failures, eight times over, and still none that costs a delay.
+    await refusal(signIn(viewer.email, 'wrong', { address: '198.51.100.21' }))
+    expect(await signIn(viewer.email, PASSWORD, { address: '198.51.100.21' })).toBeTruthy()
+  })
+
+  it('sweeps away what is long past', async () => {
+    await test.db.insert(signInThrottles).values({
+      key: 'account:long-past',
+      failures: 3,
+      lastFailureAt: new Date(NOW.getTime() - 7_200_000),
+      blockedUntil: new Date(NOW.getTime() - 7_200_000),
+    })
+    await refusal(signIn('nobody@example.org', 'wrong', { address: '192.0.2.77' }))
+    const rows = await test.db
+      .select()
+      .from(signInThrottles)
+      .where(eq(signInThrottles.key, 'account:long-past'))
+    expect(rows).toEqual([])
   })
 
   it('holds an address that tries many accounts', async () => {

@@ -82,13 +82,13 @@ export const ACTIONS: Record<string, Row> = {
     'sign-in',
   ),
   'account/signOutEverywhere': row(
-    '401',
     'sign-in',
     'sign-in',
     'sign-in',
     'sign-in',
     'sign-in',
-    '401',
+    'sign-in',
+    'sign-in',
   ),
   // With a wrong present password.
   'account/changePassword': row(
@@ -101,7 +101,7 @@ export const ACTIONS: Record<string, Row> = {
     'refused',
   ),
   // To the first gym, where the coach of the second is not.
-  'account/switchGym': row('401', 'on', 'on', 'on', '404', 'on', '401'),
+  'account/switchGym': row('sign-in', 'on', 'on', 'on', '404', 'on', 'sign-in'),
   'health/saveHealthAnswers': row(
     'refused',
     'ok',

@@ -3,7 +3,8 @@ import { randomUUID } from 'node:crypto'
 import postgres from 'postgres'
 import { openDatabase, type Database } from '@/db/client'
 
-export const TEMPLATE = 'floorside_test_template'
+/** Named by the set-up, so that two runs on one server do not meet. */
+export const TEMPLATE_VARIABLE = 'FLOORSIDE_TEST_TEMPLATE'
 
 /** The server on which tests make their databases. Throws a sentence where none is named. */
 export function testServerUrl(): string {
@@ -34,7 +35,7 @@ export interface TestDatabase {
 export async function makeTestDatabase(): Promise<TestDatabase> {
   const name = `floorside_test_${randomUUID().replaceAll('-', '')}`
   const admin = postgres(testServerUrl(), { max: 1, onnotice: () => undefined })
-  await admin.unsafe(`create database ${name} template ${TEMPLATE}`)
+  await admin.unsafe(`create database ${name} template ${process.env[TEMPLATE_VARIABLE]}`)
   const url = onDatabase(testServerUrl(), name)
   const { sql, db } = openDatabase(url, 8)
   return {

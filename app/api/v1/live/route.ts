@@ -1,8 +1,8 @@
 /**
  * GET ?boards=id,id: event stream for the gym's coaches. Event `board` carries `LiveBoardChange`: that
  * board is at that revision, read it again if yours is older. Present revisions come at once, so a
- * reader that was away catches up. A comment every 15 s keeps the line open and checks that the reader
- * is still signed in; the stream ends within that time after a sign-out.
+ * reader that was away catches up. A comment every 15 s keeps the line open. The stream ends within 15 s
+ * after a sign-out, a new password, a deactivation or a switch to another gym.
  */
 import { AppError } from '@/server/contract/errors'
 import { readSessionCookie } from '@/server/auth/cookie'
@@ -16,6 +16,8 @@ import { isClosing, registerStream } from '@/server/live/registry'
 export const dynamic = 'force-dynamic'
 
 const HEARTBEAT_MS = 15_000
+/** With the five seconds that the database may take, a stream outlives its session by 15 s at most. */
+const SESSION_CHECK_MS = 10_000
 const MOST_BOARDS = 20
 
 export const GET = handler<Record<string, never>>(async (request, _params, { viewer }) => {
@@ -30,6 +32,8 @@ export const GET = handler<Record<string, never>>(async (request, _params, { vie
   const token = await readSessionCookie()
   const text = new TextEncoder()
   let close = () => undefined as void
+  /** A stream that its reader has cancelled is closed already. */
+  let isCancelled = false
 
   const body = new ReadableStream<Uint8Array>({
     start(controller) {
@@ -40,30 +44,32 @@ export const GET = handler<Record<string, never>>(async (request, _params, { vie
       const unread = boardFeed().read(boards, (change) =>
         send(`id: ${change.revision}\nevent: board\ndata: ${JSON.stringify(change)}\n\n`),
       )
-      const heartbeat = setInterval(() => {
+      const heartbeat = setInterval(() => send(': here\n\n'), HEARTBEAT_MS)
+      const sessionCheck = setInterval(() => {
         sessionOf(token).then(
           (session) => {
-            if (session?.viewer.roles.includes('coach') && session.viewer.gymId === viewer.gymId)
-              send(': here\n\n')
-            else close()
+            if (!session?.viewer.roles.includes('coach') || session.viewer.gymId !== viewer.gymId)
+              close()
           },
           // The database is away: the stream stays, the reader sees an old board and its age.
-          () => send(': here\n\n'),
+          () => undefined,
         )
-      }, HEARTBEAT_MS)
+      }, SESSION_CHECK_MS)
       const forget = registerStream(() => close())
       close = () => {
         if (!isOpen) return
         isOpen = false
         clearInterval(heartbeat)
+        clearInterval(sessionCheck)
         unread()
         forget()
-        controller.close()
+        if (!isCancelled) controller.close()
       }
       request.signal.addEventListener('abort', close)
       send('retry: 2000\n\n')
     },
     cancel() {
+      isCancelled = true
       close()
     },
   })

@@ -1,0 +1,1 @@
+CREATE INDEX "sign_in_throttles_last_failure_idx" ON "sign_in_throttles" USING btree ("last_failure_at");
