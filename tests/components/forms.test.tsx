@@ -1,4 +1,4 @@
-import { act, fireEvent, render, screen, within } from '@testing-library/react'
+import { act, fireEvent, render, screen, waitFor, within } from '@testing-library/react'
 import userEvent from '@testing-library/user-event'
 import { beforeEach, describe, expect, test, vi } from 'vitest'
 import { KitForm } from '@/components/account/kit-form'
@@ -48,9 +48,9 @@ describe('a form', () => {
     render(<SignInForm next={null} />)
     await userEvent.click(screen.getByRole('button', { name: 'Sign in' }))
     const email = screen.getByLabelText('E-mail')
+    await waitFor(() => expect(document.activeElement).toBe(email))
     expect(descriptionOf(email)).toBe('Give your e-mail address.')
     expect(email.getAttribute('aria-invalid')).toBe('true')
-    expect(document.activeElement).toBe(email)
     expect(descriptionOf(screen.getByLabelText('Password'))).toBe('Give your password.')
     expect(screen.getByRole('alert').textContent).toBe('Not done: Two things are needed.')
   })
@@ -59,7 +59,7 @@ describe('a form', () => {
     actions.signIn.mockResolvedValueOnce(REFUSED)
     render(<SignInForm next={null} />)
     await userEvent.click(screen.getByRole('button', { name: 'Sign in' }))
-    expect(document.activeElement).toBe(screen.getByRole('alert'))
+    await waitFor(() => expect(document.activeElement).toBe(screen.getByRole('alert')))
     expect(screen.getByRole('alert').textContent).toBe(
       'Not done: E-mail and password do not belong together.',
     )
@@ -71,6 +71,7 @@ describe('a form', () => {
     await userEvent.type(screen.getByLabelText('E-mail'), 'agnes@thorsby.example')
     await userEvent.type(screen.getByLabelText('Password'), 'not the password')
     await userEvent.click(screen.getByRole('button', { name: 'Sign in' }))
+    await screen.findByText(/do not belong together/)
     expect(valueOf(screen.getByLabelText('E-mail'))).toBe('agnes@thorsby.example')
     expect(valueOf(screen.getByLabelText('Password'))).toBe('not the password')
     const sent = actions.signIn.mock.calls[0]?.[1]
@@ -124,10 +125,12 @@ test('a changed password is said and no password stays in the fields', async () 
   const fields = ['Present password', 'New password', 'New password once more']
   for (const label of fields) await userEvent.type(screen.getByLabelText(label), 'a few words here')
   await userEvent.click(screen.getByRole('button', { name: 'Change password' }))
-  expect(screen.getByRole('status').textContent).toBe(
+  expect((await screen.findByRole('status')).textContent).toBe(
     'Done: Your password is changed. Other browsers are signed out.',
   )
-  for (const label of fields) expect(valueOf(screen.getByLabelText(label))).toBe('')
+  await waitFor(() => {
+    for (const label of fields) expect(valueOf(screen.getByLabelText(label))).toBe('')
+  })
 })
 
 describe('own kit', () => {
@@ -143,7 +146,7 @@ describe('own kit', () => {
     await userEvent.click(less)
     expect(line('Dumbbells').getByRole('status').textContent).toBe('0')
     expect(less.getAttribute('aria-disabled')).toBe('true')
-    expect(document.activeElement).toBe(less)
+    await waitFor(() => expect(document.activeElement).toBe(less))
     await userEvent.click(less)
     expect(line('Dumbbells').getByRole('status').textContent).toBe('0')
   })
@@ -158,6 +161,6 @@ describe('own kit', () => {
     const sent = Object.fromEntries(actions.saveOwnKit.mock.calls[0]?.[1] ?? [])
     expect(sent).toMatchObject({ mat: '1', band: '1', dumbbell: '0' })
     rerender(<KitForm kit={{ mat: 1, band: 1 }} />)
-    expect(screen.getByText('Your kit is saved.')).toBeTruthy()
+    expect(await screen.findByText('Your kit is saved.')).toBeTruthy()
   })
 })

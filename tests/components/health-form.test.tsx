@@ -1,4 +1,4 @@
-import { render, screen, within } from '@testing-library/react'
+import { render, screen, within, waitFor } from '@testing-library/react'
 import userEvent from '@testing-library/user-event'
 import { beforeEach, expect, test, vi } from 'vitest'
 import { HealthForm } from '@/components/health/health-form'
@@ -106,9 +106,11 @@ test('an open question is named beside it and its choice has the focus', async (
   render(<HealthForm health={UNANSWERED} next="/today" />)
   await answer('chest-pain', 'No')
   await userEvent.click(screen.getByRole('button', { name: 'Save my answers' }))
-  expect(descriptionOf(asked('breathless'))).toBe('Answer with yes or no.')
-  expect(document.activeElement).toBe(
-    within(asked('breathless')).getByRole('radio', { name: 'No' }),
+  await waitFor(() => expect(descriptionOf(asked('breathless'))).toBe('Answer with yes or no.'))
+  await waitFor(() =>
+    expect(document.activeElement).toBe(
+      within(asked('breathless')).getByRole('radio', { name: 'No' }),
+    ),
   )
   expect(isTicked(within(asked('chest-pain')).getByRole('radio', { name: 'No' }))).toBe(true)
   expect(router.push).not.toHaveBeenCalled()
@@ -122,5 +124,5 @@ test('saved answers lead back to where one came from', async () => {
     <HealthForm health={{ ...UNANSWERED, answers: ALL_NO, standing: 'clear' }} next="/play/1" />,
   )
   await userEvent.click(screen.getByRole('button', { name: 'Save my answers' }))
-  expect(router.push).toHaveBeenCalledExactlyOnceWith('/play/1')
+  await waitFor(() => expect(router.push).toHaveBeenCalledExactlyOnceWith('/play/1'))
 })
