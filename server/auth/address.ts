@@ -30,7 +30,7 @@ export async function networkAddress(): Promise<string> {
 
 /**
  * The address before `proxies` trusted ones, from the end of `forwarded`, where nobody but they can
- * write. An IPv6 address counts as its /64, which is what one household is given.
+ * write. An IPv6 address counts as its /64: the rest is a device's own to choose (RFC 4291, 2.5.4).
  */
 export function addressFrom(forwarded: string | null, proxies: number): string {
   const entries = (forwarded ?? '').split(',').map((entry) => entry.trim())

@@ -14,9 +14,9 @@ describe('the network address', () => {
     ['two proxies stand before us', '203.0.113.9, 192.0.2.1, 10.0.0.3, 10.0.0.2', 2, '192.0.2.1'],
     ['a proxy was passed by', '192.0.2.1', 1, '192.0.2.1'],
     ['IPv4 comes in IPv6 clothes', '::ffff:192.0.2.1', 0, '192.0.2.1'],
-    // RFC 3849 documentation addresses; a /64 is what a household is given (RFC 6177).
-    ['a household has many', '2001:db8:1:2:aaaa::1', 0, '2001:db8:1:2::/64'],
-    ['the same household', '2001:0DB8:0001:0002:bbbb:cccc:dddd:eeee', 0, '2001:db8:1:2::/64'],
+    // RFC 3849 documentation addresses. RFC 4291, 2.5.4: the last 64 bits are the device's own to choose.
+    ['a device has many', '2001:db8:1:2:aaaa::1', 0, '2001:db8:1:2::/64'],
+    ['the same device later', '2001:0DB8:0001:0002:bbbb:cccc:dddd:eeee', 0, '2001:db8:1:2::/64'],
     ['the groups are left out', '2001:db8::1', 0, '2001:db8:0:0::/64'],
     ['it is our own computer', '::1', 0, '0:0:0:0::/64'],
     ['it is no address', 'unknown', 0, 'unknown'],
