@@ -38,9 +38,9 @@ export function KitForm({ kit }: { kit: Record<string, number> }) {
           return (
             <li
               key={item}
-              className="flex items-center justify-between gap-4 border-b-4 border-fill py-1.5"
+              className="flex items-center justify-between gap-2 border-b-4 border-fill py-1.5"
             >
-              <span className="flex items-center gap-5 font-semibold">
+              <span className="flex min-w-0 items-center gap-2 font-semibold sm:gap-5">
                 <KitPicture item={item} count={1} />
                 {label}
               </span>
@@ -55,7 +55,7 @@ export function KitForm({ kit }: { kit: Record<string, number> }) {
                 </Step>
                 <output
                   aria-label={`${label}: how many`}
-                  className="w-12 text-center figures text-3xl"
+                  className="w-10 text-center figures text-3xl sm:w-12"
                 >
                   {count}
                 </output>

@@ -45,7 +45,7 @@ export function ClassDays({ classes, today, dateStyle, hrefOf, remark }: ClassDa
             <div className="min-w-0 leading-tight @max-lg:col-span-2 @max-lg:row-start-2">
               <Link
                 href={hrefOf(one.scheduledClassId)}
-                className="font-display text-xl font-bold decoration-3 underline-offset-6 after:absolute after:inset-0 hover:underline"
+                className="font-display text-xl font-bold [overflow-wrap:anywhere] decoration-3 underline-offset-6 after:absolute after:inset-0 hover:underline"
               >
                 {one.title}
               </Link>

@@ -52,7 +52,7 @@ export function SiteHeader({ viewer }: { viewer: Viewer }) {
         ))}
       </nav>
       <Menu summary={<AccountWord name={viewer.name} />}>
-        <p className="border-b-4 border-fill px-4 py-2.5 leading-tight">
+        <p className="px-4 py-2.5 leading-tight">
           <strong className="block">{viewer.name}</strong>
           <span className="[overflow-wrap:anywhere] text-text-quiet">{viewer.email}</span>
         </p>

@@ -4,6 +4,9 @@ import type { CSSProperties, ReactNode } from 'react'
 /** Width of a heading's letters in em, on the generous side. */
 const LETTER_EM = 0.62
 
+/** Longer ones are set smaller, or they would push what they name off the screen. */
+const LONG = 24
+
 type FitStyle = CSSProperties & { '--fit': string }
 
 /**
@@ -26,7 +29,7 @@ export function PageTitle({
       style={style}
       className={clsx(
         '-ml-[0.04em] leading-[0.95] font-extrabold text-balance [overflow-wrap:anywhere]',
-        size === 'short'
+        size === 'short' && children.length <= LONG
           ? 'text-[min(3.75rem,var(--fit))] sm:text-[min(4.5rem,var(--fit))] lg:text-[min(6rem,var(--fit))]'
           : 'text-[min(3rem,var(--fit))] sm:text-[min(3.75rem,var(--fit))]',
       )}

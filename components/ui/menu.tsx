@@ -3,7 +3,7 @@ import { useEffect, useRef, type ReactNode } from 'react'
 
 /** Its items look alike, whether links or buttons. */
 export const MENU_ITEM =
-  'flex min-h-12 w-full cursor-pointer items-center border-b-4 border-fill px-4 text-left decoration-3 underline-offset-6 last:border-b-0 hover:underline'
+  'flex min-h-12 w-full cursor-pointer items-center px-4 py-1.5 text-left decoration-3 underline-offset-6 hover:underline'
 
 /** A few ways on behind one word. Closes by Escape, by a press elsewhere and when the focus leaves. */
 export function Menu({ summary, children }: { summary: ReactNode; children: ReactNode }) {
@@ -48,7 +48,7 @@ export function Menu({ summary, children }: { summary: ReactNode; children: Reac
           <path d="M1 1.5l5 5 5-5" fill="none" stroke="currentColor" strokeWidth="2.4" />
         </svg>
       </summary>
-      <div className="absolute top-full right-0 z-30 w-max max-w-[calc(100vw-2rem)] min-w-56 border-4 border-line bg-raised">
+      <div className="absolute top-full right-0 z-30 w-max max-w-[calc(100vw-2rem)] min-w-56 divide-y-4 divide-fill border-4 border-line bg-raised">
         {children}
       </div>
     </details>

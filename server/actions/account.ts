@@ -22,7 +22,7 @@ const userAgent = async () => (await headers()).get('user-agent') ?? ''
 export async function signIn(_before: ActionResult | null, form: FormData): Promise<ActionResult> {
   const parsed = signInInput.safeParse(Object.fromEntries(form))
   if (!parsed.success) {
-    return { ok: false, message: 'Two things are needed.', fields: fieldMessages(parsed.error) }
+    return { ok: false, message: 'Both are needed.', fields: fieldMessages(parsed.error) }
   }
   const { email, password, next } = parsed.data
   const done = await outcome('signIn', async () => {

@@ -83,6 +83,13 @@ describe.each([
   })
 })
 
+test.each(['text', 'text-quiet', 'rest', 'stop', 'done', 'present'])(
+  '%s is read from across the hall: 7 to 1 on its ground',
+  (front) => {
+    expect(contrast(hall.get(front) ?? '', hall.get('ground') ?? '')).toBeGreaterThanOrEqual(7)
+  },
+)
+
 test('yellow on the dark ground may be text, on birch only a fill', () => {
   const [onHall, onBirch] = [hall, birch].map((ground) =>
     contrast(ground.get('present') ?? '', ground.get('ground') ?? ''),

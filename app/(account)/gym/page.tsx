@@ -72,7 +72,7 @@ export default async function GymPage() {
                     <th scope="row" className="py-2.5 pr-5 max-sm:block max-sm:py-0">
                       {person.name}
                     </th>
-                    <td className="pr-5 [overflow-wrap:anywhere] text-text-quiet max-sm:block">
+                    <td className="pr-5 break-words text-text-quiet max-sm:block">
                       {person.email}
                     </td>
                     <td className="pr-5 whitespace-nowrap max-sm:inline">

@@ -95,7 +95,7 @@ function AttemptLine({ attempt, dateStyle }: { attempt: OwnAttempt; dateStyle: D
         className="grid grid-cols-[1fr_auto] items-baseline gap-x-8 gap-y-0.5 py-3 decoration-3 underline-offset-6 hover:bg-fill/40 hover:underline sm:grid-cols-[14rem_1fr_9rem_6rem]"
       >
         <span className="text-text-quiet">{dayName(attempt.day, dateStyle)}</span>
-        <span className="font-display text-2xl font-bold max-sm:col-span-2 max-sm:row-start-2">
+        <span className="font-display text-2xl font-bold [overflow-wrap:anywhere] max-sm:col-span-2 max-sm:row-start-2">
           {attempt.title}
         </span>
         <span className="max-sm:text-right">

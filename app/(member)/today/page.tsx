@@ -165,7 +165,7 @@ function Near({ title, scheduled, fullMs, dateStyle }: NearProps) {
       <h2 className="text-lg font-normal text-text-quiet">{title}</h2>
       <Link
         href={paths.classPage(scheduled.scheduledClassId)}
-        className="font-display text-4xl leading-tight font-bold decoration-3 underline-offset-6 hover:underline"
+        className="font-display text-3xl leading-tight font-bold [overflow-wrap:anywhere] decoration-3 underline-offset-6 hover:underline sm:text-4xl"
       >
         {scheduled.title}
       </Link>
