@@ -2,6 +2,9 @@ import AxeBuilder from '@axe-core/playwright'
 import { expect, test, type Page } from '@playwright/test'
 import { signedIn, visitor } from './gym'
 
+// Nine pages at three sizes, looked at by axe: a busy computer takes its time.
+test.setTimeout(300_000)
+
 const SIZES = [
   { width: 390, height: 844 },
   { width: 1440, height: 900 },
