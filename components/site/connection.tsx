@@ -1,5 +1,6 @@
 'use client'
 import { useEffect, useSyncExternalStore } from 'react'
+import { Sign } from '@/components/ui/sign'
 import { registerServiceWorker } from '@/hooks/player/service-worker'
 import { useOutboxDrain } from '@/hooks/use-outbox-drain'
 
@@ -25,8 +26,12 @@ export function Connection({ membershipId }: { membershipId: string | null }) {
       {membershipId === null ? null : <Drain membershipId={membershipId} />}
       <div role="status">
         {isOnline ? null : (
-          <p className="mt-2 border-l-8 border-rest page">
-            No network. You see what was loaded; a class that is open goes on and is sent later.
+          <p className="mt-2 flex items-center gap-3 border-y-4 border-rest bg-raised page py-2 leading-snug">
+            <Sign tone="info" />
+            <span>
+              <strong>No network.</strong> You see what was loaded; a class that is open goes on and
+              is sent later.
+            </span>
           </p>
         )}
       </div>

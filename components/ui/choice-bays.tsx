@@ -24,10 +24,10 @@ export function ChoiceBays<Value extends string>({
         <label
           key={value}
           className={clsx(
-            'relative -ml-0.5 flex min-h-13 min-w-20 cursor-pointer items-center justify-center px-4 font-semibold first:ml-0 has-focus-visible:outline-4 has-focus-visible:outline-offset-3 has-focus-visible:outline-present',
+            'relative -ml-0.5 flex min-h-13 min-w-20 cursor-pointer items-center justify-center font-semibold first:ml-0 has-focus-visible:z-20 has-focus-visible:shadow-[0_0_0_2px_var(--text)] has-focus-visible:outline-4 has-focus-visible:outline-offset-2 has-focus-visible:outline-present',
             value === chosen
-              ? 'z-10 bg-present text-on-present outline-4 -outline-offset-2 outline-on-present'
-              : 'border-2 border-line-lesser hover:bg-fill',
+              ? 'z-10 border-4 border-on-present bg-present px-3.5 text-on-present'
+              : 'border-2 border-line-lesser px-4 hover:bg-fill',
           )}
         >
           <input

@@ -1,12 +1,14 @@
 import type { Metadata } from 'next'
 import { HealthForm } from '@/components/health/health-form'
 import { PageFrame } from '@/components/site/page-frame'
+import { PageTitle } from '@/components/ui/heading'
 import { requireRole } from '@/server/auth/viewer'
 import { dateOf } from '@/server/contract/format'
 import { safeNext } from '@/server/contract/forms'
 import { paths } from '@/server/contract/paths'
 import { defaultDb } from '@/server/data/db'
 import { getHealth } from '@/server/data/health'
+import { readerDateStyle } from '@/server/http/reader'
 
 export const metadata: Metadata = { title: 'Health questions' }
 
@@ -21,7 +23,7 @@ export default async function HealthPage({
   return (
     <PageFrame viewer={viewer}>
       <div className="max-w-4xl page">
-        <h1 className="text-5xl font-extrabold sm:text-6xl">Health questions</h1>
+        <PageTitle size="long">Health questions</PageTitle>
         <div className="mt-4 max-w-2xl space-y-3 text-lg">
           <p>
             Exercise can hurt people. These questions find out whether you should talk to somebody
@@ -31,7 +33,7 @@ export default async function HealthPage({
           <p className="text-text-quiet">
             You and the coaches of {viewer.gym.name} see your answers, nobody else.
             {health.answeredAt
-              ? ` You answered last on ${dateOf(health.answeredAt, viewer.gym.timeZone)}.`
+              ? ` You answered last on ${dateOf(health.answeredAt, viewer.gym.timeZone, await readerDateStyle())}.`
               : ''}
           </p>
         </div>

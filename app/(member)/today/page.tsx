@@ -1,6 +1,8 @@
 import type { Metadata } from 'next'
 import Link from 'next/link'
+import { Suspense } from 'react'
 import { ClassOverview } from '@/components/classes/class-overview'
+import { ClassWaiting } from '@/components/classes/class-waiting'
 import { KitLines } from '@/components/classes/kit-lines'
 import { StillFigure } from '@/components/figure/still-figure'
 import { HealthLines } from '@/components/health/health-lines'
@@ -34,20 +36,25 @@ function foremost(classes: readonly ScheduledClassSummary[]): ScheduledClassSumm
 
 export default async function TodayPage() {
   const viewer = await requireRole(paths.today(), 'member')
-  const now = new Date()
-  const classes = await listToday(viewer, { now }, defaultDb())
-  const shown = foremost(classes)
   return (
     <PageFrame viewer={viewer}>
-      {shown ? (
-        <>
-          <TodaysClass viewer={viewer} scheduledClass={shown} now={now} />
-          <AlsoToday classes={classes.filter((one) => one !== shown)} />
-        </>
-      ) : (
-        <NothingToday viewer={viewer} now={now} />
-      )}
+      {/* Read below the guard, so that a page that is not one's own is still a 404. */}
+      <Suspense fallback={<ClassWaiting />}>
+        <Today viewer={viewer} now={new Date()} />
+      </Suspense>
     </PageFrame>
+  )
+}
+
+async function Today({ viewer, now }: { viewer: Viewer; now: Date }) {
+  const classes = await listToday(viewer, { now }, defaultDb())
+  const shown = foremost(classes)
+  if (!shown) return <NothingToday viewer={viewer} now={now} />
+  return (
+    <>
+      <TodaysClass viewer={viewer} scheduledClass={shown} now={now} />
+      <AlsoToday classes={classes.filter((one) => one !== shown)} />
+    </>
   )
 }
 
