@@ -53,6 +53,8 @@ async function takeAll(browser) {
   await shoot(member, 'today')
 
   await member.setViewportSize(SIZES[1])
+  // The day's own page leads with the class being played, the schedule with today's.
+  await member.goto(`${origin}/classes`)
   await member.getByRole('link', { name: SHORT_CLASS }).first().click()
   await member.waitForURL(/\/classes\/.+/)
   await member.getByRole('link', { name: /Get ready|Play again|Go on/ }).click()

@@ -21,7 +21,7 @@ export function NavLink({ href, not = [], children }: NavLinkProps) {
       href={href}
       aria-current={isExactly ? 'page' : isHere ? true : undefined}
       className={clsx(
-        'flex min-h-12 items-center px-2 decoration-3 underline-offset-8 hover:underline sm:px-2.5',
+        'flex min-h-12 items-center px-1.5 decoration-3 underline-offset-8 hover:underline sm:px-2.5',
         isHere && 'font-bold underline decoration-present',
       )}
     >

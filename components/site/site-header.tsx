@@ -43,7 +43,7 @@ export function SiteHeader({ viewer }: { viewer: Viewer }) {
       </p>
       <nav
         aria-label="Main"
-        className="order-last -mx-2 flex w-[calc(100%+1rem)] flex-wrap items-center lg:order-none lg:mx-0 lg:w-auto"
+        className="order-last -mx-1.5 flex w-[calc(100%+0.75rem)] flex-wrap items-center lg:order-none lg:mx-0 lg:w-auto"
       >
         {links.map(({ href, text, ...more }) => (
           <NavLink key={href} href={href} {...more}>

@@ -29,11 +29,12 @@ function weeksOf(text: string | string[] | undefined): number {
 }
 
 function remark(one: ScheduledClassSummary): ReactNode {
+  const [latest] = one.myAttempts
+  if (latest?.state === 'in-class' || latest?.state === 'paused') return <strong>in class</strong>
   if (one.myAttempts.some((attempt) => attempt.state === 'finished')) {
     return <span className="font-semibold text-done">✓ done</span>
   }
-  if (one.myAttempts.some((attempt) => attempt.state === 'stopped')) return 'stopped'
-  return one.myAttempts.length > 0 ? <strong>in class</strong> : null
+  return latest?.state === 'stopped' ? 'stopped' : null
 }
 
 interface Span {
