@@ -1,8 +1,10 @@
 /** The database of this process: one pool, one drizzle over it. */
 import { drizzle, type PostgresJsDatabase } from 'drizzle-orm/postgres-js'
-import postgres from 'postgres'
+import type { SQL } from 'drizzle-orm'
+import { PgDialect } from 'drizzle-orm/pg-core'
+import postgres, { type Sql } from 'postgres'
 
-export type Database = PostgresJsDatabase
+export type Database = PostgresJsDatabase & { $client: Sql }
 /** What data functions take: the pool or a transaction of it. */
 export type DbOrTx = Pick<
   Database,
@@ -15,6 +17,26 @@ export type DbOrTx = Pick<
   | 'execute'
   | 'transaction'
 >
+
+/** Whether this is the pool, and not a transaction of it. */
+export function isPool(db: DbOrTx): db is Database {
+  return '$client' in db
+}
+
+const dialect = new PgDialect()
+
+/**
+ * Runs a statement that is asked for again and again: the server keeps its plan for each connection,
+ * which drizzle itself never asks for. Inside a transaction it runs as any other.
+ */
+export async function executePrepared<Row extends Record<string, unknown>>(
+  db: DbOrTx,
+  statement: SQL,
+): Promise<Row[]> {
+  if (!isPool(db)) return db.execute<Row>(statement) as Promise<unknown> as Promise<Row[]>
+  const { sql, params } = dialect.sqlToQuery(statement)
+  return db.$client.unsafe<Row[]>(sql, params as string[], { prepare: true })
+}
 
 export function databaseUrl(): string {
   const url = process.env.DATABASE_URL
@@ -34,7 +56,7 @@ export function openDatabase(url: string, max = 10) {
     connection: { statement_timeout: 5_000, application_name: 'floorside' },
     onnotice: () => undefined,
   })
-  return { sql, db: drizzle(sql) as Database }
+  return { sql, db: drizzle(sql) }
 }
 
 type Opened = ReturnType<typeof openDatabase>

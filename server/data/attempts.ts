@@ -2,7 +2,7 @@ import 'server-only'
 /** Recording and reading attempts. */
 import { and, asc, desc, eq, inArray, sql } from 'drizzle-orm'
 import { v7 } from 'uuid'
-import type { DbOrTx } from '@/db/client'
+import { executePrepared, type DbOrTx } from '@/db/client'
 import { timed } from '@/db/deadline'
 import { attemptEvents } from '@/db/schema/attempt-events'
 import { attempts } from '@/db/schema/attempts'
@@ -19,11 +19,9 @@ import type { Viewer } from '@/server/contract/viewer'
 import type { ClassEvent } from '@/server/engine/tally/events'
 import { fold } from '@/server/engine/tally/fold'
 import type { AttemptState } from '@/server/engine/tally/types'
+import { tellBoard } from './board-notices'
 import { getScheduledClass, visibleTo } from './classes'
 import { getHealth, openHolds } from './health'
-
-/** Channel on which ids of changed boards are told to every process. */
-export const BOARD_CHANNEL = 'floorside_board'
 
 const STATE_AFTER: Partial<Record<ClassEvent['type'], AttemptState>> = {
   started: 'in-class',
@@ -37,6 +35,8 @@ function byOrder(a: ClassEvent, b: ClassEvent): number {
   return a.seq - b.seq || (a.id < b.id ? -1 : 1)
 }
 
+type RecordParams = { attemptId: string; input: RecordEventsInput; now: Date }
+
 /**
  * Stores events of the viewer's own attempt, each exactly once whatever is repeated, and answers with
  * the ids that are stored now. The attempt is made by its first events. Throws `not-found` for a class
@@ -44,61 +44,50 @@ function byOrder(a: ClassEvent, b: ClassEvent): number {
  * the attempt's, `not-allowed` where health answers keep a new attempt from starting.
  */
 export const recordEvents = timed(
-  async (
-    viewer: Viewer,
-    params: { attemptId: string; input: RecordEventsInput; now: Date },
-    db: DbOrTx,
-  ): Promise<RecordEventsResult> => {
-    const { attemptId, input, now } = params
-    return db.transaction(async (tx) => {
-      const [known] = await tx
-        .select()
-        .from(attempts)
-        .where(eq(attempts.id, attemptId))
-        .for('update')
-      if (known && known.membershipId !== viewer.membershipId) throw notThere()
-      if (
-        known &&
-        (known.scheduledClassId !== input.scheduledClassId || known.versionId !== input.versionId)
-      ) {
-        throw new AppError(
-          'conflict',
-          'These rounds belong to another class than the one recorded here. They stay on this computer.',
-        )
-      }
-      if (!known) await begin(viewer, params, tx)
-      for (const event of input.events) {
-        if (event.type === 'started' && event.version !== input.versionId) {
-          throw new AppError('conflict', 'This class was started on another version of the class.')
-        }
-      }
-      const inserted = await tx
-        .insert(attemptEvents)
-        .values(
-          input.events.map((event) => ({
-            attemptId,
-            id: event.id,
-            seq: event.seq,
-            content: event,
-            receivedAt: now,
-          })),
-        )
-        .onConflictDoNothing()
-        .returning({ id: attemptEvents.id })
-      if (inserted.length > 0)
-        await note(viewer, params, new Set(inserted.map((row) => row.id)), tx)
-      const [highest] = await tx
-        .select({ seq: attemptEvents.seq })
-        .from(attemptEvents)
-        .where(eq(attemptEvents.attemptId, attemptId))
-        .orderBy(desc(attemptEvents.seq))
-        .limit(1)
-      return { stored: input.events.map((event) => event.id), highestSeq: highest?.seq ?? 0 }
-    })
+  async (viewer: Viewer, params: RecordParams, db: DbOrTx): Promise<RecordEventsResult> => {
+    const { input } = params
+    const hasMore = input.events.some((event) => event.type === 'started' || event.type === 'hurt')
+    // Nearly all batches are rounds of an attempt that stands, and one statement is a transaction.
+    const stored =
+      (hasMore ? null : await store(viewer, params, db)) ??
+      (await db.transaction((tx) => beginAndStore(viewer, params, tx)))
+    if (stored.fresh > 0) await tellBoard(db, input.scheduledClassId)
+    return { stored: input.events.map((event) => event.id), highestSeq: stored.highestSeq }
   },
 )
 
-type RecordParams = { attemptId: string; input: RecordEventsInput; now: Date }
+interface Stored {
+  /** How many of the batch had not been stored before. */
+  fresh: number
+  highestSeq: number
+}
+
+async function beginAndStore(viewer: Viewer, params: RecordParams, tx: DbOrTx): Promise<Stored> {
+  const { attemptId, input } = params
+  const [known] = await tx.select().from(attempts).where(eq(attempts.id, attemptId)).for('update')
+  if (known && known.membershipId !== viewer.membershipId) throw notThere()
+  if (
+    known &&
+    (known.scheduledClassId !== input.scheduledClassId || known.versionId !== input.versionId)
+  ) {
+    throw new AppError(
+      'conflict',
+      'These rounds belong to another class than the one recorded here. They stay on this computer.',
+    )
+  }
+  const started = input.events.filter((event) => event.type === 'started')
+  if (started.some((event) => event.version !== input.versionId)) {
+    throw new AppError('conflict', 'This class was started on another version of the class.')
+  }
+  if (!known) await begin(viewer, params, tx)
+  const stored = await store(viewer, params, tx)
+  if (!stored) throw notThere()
+  if (started.length > 0 && stored.fresh > 0 && !known?.startedAt) {
+    await auditStart(viewer, attemptId, tx)
+  }
+  await raiseHolds(viewer, params, tx)
+  return stored
+}
 
 async function begin(
   viewer: Viewer,
@@ -174,65 +163,85 @@ function isClear(health: HealthStanding): boolean {
   return health.standing === 'clear' && !health.consentMissing
 }
 
-/** What beside the events follows from new ones: the attempt's dates and state, holds, word to the boards. */
-async function note(
+/**
+ * Stores what is new of a batch of the viewer's own attempt and keeps the attempt's dates and state, in
+ * one statement. Null where there is no such attempt of theirs. Each part bears being repeated: what
+ * was known changes nothing. Batches insert in one order, so that two that overlap wait, not deadlock.
+ */
+async function store(
   viewer: Viewer,
   { attemptId, input, now }: RecordParams,
-  fresh: ReadonlySet<string>,
-  tx: DbOrTx,
-): Promise<void> {
-  const events = input.events.filter((event) => fresh.has(event.id)).sort(byOrder)
+  db: DbOrTx,
+): Promise<Stored | null> {
+  const events = [...input.events].sort(byOrder)
   const started = events.find((event) => event.type === 'started')
   const finished = events.findLast((event) => event.type === 'finished')
   const turning = events.findLast((event) => STATE_AFTER[event.type] !== undefined)
-  const state = turning ? STATE_AFTER[turning.type] : undefined
-  const said = (wallMs: number) => saidAt(wallMs, now).toISOString()
+  const state = turning ? (STATE_AFTER[turning.type] ?? null) : null
+  const said = (event: ClassEvent | undefined) =>
+    event ? saidAt(event.wallMs, now).toISOString() : null
+  const [row] = await executePrepared<{ highest: string; fresh: string }>(
+    db,
+    sql`
+    with own as (
+      select id from ${attempts}
+      where id = ${attemptId} and membership_id = ${viewer.membershipId}
+        and scheduled_class_id = ${input.scheduledClassId} and version_id = ${input.versionId}
+    ), inserted as (
+      insert into ${attemptEvents} (attempt_id, id, seq, content, received_at)
+      select own.id, event ->> 'id', (event ->> 'seq')::bigint, event, ${now.toISOString()}::timestamptz
+      from own, jsonb_array_elements(${JSON.stringify(events)}::text::jsonb) event
+      on conflict do nothing
+      returning 1
+    ), noted as (
+      update ${attempts} set
+        revision = revision + fresh.count,
+        last_event_at = ${now.toISOString()}::timestamptz,
+        started_at = coalesce(started_at, ${said(started)}::timestamptz),
+        finished_at = coalesce(finished_at, ${said(finished)}::timestamptz),
+        state = case when state_seq < ${turning?.seq ?? -1}::bigint then ${state}::text else state end,
+        state_seq = greatest(state_seq, ${turning?.seq ?? -1}::bigint)
+      from (select count(*) from inserted) fresh
+      where id = ${attemptId} and fresh.count > 0
+    )
+    select (select count(*) from inserted) as fresh, greatest(${events.at(-1)?.seq ?? 0}::bigint, (
+      select seq from ${attemptEvents} where attempt_id = own.id order by seq desc limit 1
+    )) as highest
+    from own`,
+  )
+  return row ? { fresh: Number(row.fresh), highestSeq: Number(row.highest) } : null
+}
+
+/** 'This hurts' keeps the easier option for that place until member and coach have cleared it. */
+async function raiseHolds(
+  viewer: Viewer,
+  { attemptId, input, now }: RecordParams,
+  tx: DbOrTx,
+): Promise<void> {
+  const hurts = input.events.filter((event) => event.type === 'hurt')
+  if (hurts.length === 0) return
   await tx
-    .update(attempts)
-    .set({
-      revision: sql`${attempts.revision} + ${events.length}`,
-      lastEventAt: now,
-      ...(started
-        ? { startedAt: sql`coalesce(${attempts.startedAt}, ${said(started.wallMs)}::timestamptz)` }
-        : {}),
-      ...(finished
-        ? {
-            finishedAt: sql`coalesce(${attempts.finishedAt}, ${said(finished.wallMs)}::timestamptz)`,
-          }
-        : {}),
-      ...(turning && state
-        ? {
-            state: sql`case when ${attempts.stateSeq} < ${turning.seq} then ${state} else ${attempts.state} end`,
-            stateSeq: sql`greatest(${attempts.stateSeq}, ${turning.seq})`,
-          }
-        : {}),
-    })
-    .where(eq(attempts.id, attemptId))
-  const hurts = events.filter((event) => event.type === 'hurt')
-  if (hurts.length > 0) {
-    await tx
-      .insert(hurtHolds)
-      .values(
-        hurts.map((event) => ({
-          id: event.id,
-          membershipId: viewer.membershipId,
-          attemptId,
-          place: event.where,
-          createdAt: now,
-        })),
-      )
-      .onConflictDoNothing()
-  }
-  if (started) {
-    await tx.insert(auditEntries).values({
-      id: v7(),
-      gymId: viewer.gymId,
-      personId: viewer.personId,
-      action: 'attempt.started',
-      subject: attemptId,
-    })
-  }
-  await tx.execute(sql`select pg_notify(${BOARD_CHANNEL}, ${input.scheduledClassId})`)
+    .insert(hurtHolds)
+    .values(
+      hurts.map((event) => ({
+        id: event.id,
+        membershipId: viewer.membershipId,
+        attemptId,
+        place: event.where,
+        createdAt: now,
+      })),
+    )
+    .onConflictDoNothing()
+}
+
+async function auditStart(viewer: Viewer, attemptId: string, tx: DbOrTx): Promise<void> {
+  await tx.insert(auditEntries).values({
+    id: v7(),
+    gymId: viewer.gymId,
+    personId: viewer.personId,
+    action: 'attempt.started',
+    subject: attemptId,
+  })
 }
 
 /** One attempt: the member's own, or any of the gym for its coaches. Throws `not-found` otherwise. */

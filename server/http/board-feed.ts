@@ -1,6 +1,6 @@
 import 'server-only'
 import { database, databaseSql } from '@/db/client'
-import { BOARD_CHANNEL } from '@/server/data/attempts'
+import { BOARD_CHANNEL } from '@/server/data/board-notices'
 import { boardRevisions } from '@/server/data/boards'
 import { BoardFeed } from '@/server/live/boards'
 
