@@ -185,6 +185,7 @@ describe('ladders', () => {
     ['then without an end', { from: 3, step: 3, then: 'hold' }, `${REPS}.then`],
     ['down without an end', { from: 12, step: -3 }, `${REPS}.to`],
     ['down to 0', { from: 12, step: -3, to: 0 }, `${REPS}.to`],
+    ['up and then done', { from: 3, step: 3, to: 9, then: 'done' }, `${REPS}.then`],
   ])('find %s', (_name, reps, path) => {
     expect(paths(withReps(reps))).toEqual([path])
   })
@@ -207,6 +208,15 @@ describe('ladders', () => {
     expect(check(spec(block({ format: { ...format, rounds: 3 } })))).toEqual([])
     const held = { ...format, stations: [station({ reps: { list: [3, 2, 1], then: 'hold' } })] }
     expect(check(spec(block({ format: held })))).toEqual([])
+  })
+  it('count no rungs of a ladder that is wrong itself', () => {
+    const format = {
+      type: 'for-time',
+      rounds: 5,
+      cap: 60,
+      stations: [station({ reps: { from: 3, step: -3, to: 9, then: 'done' } })],
+    }
+    expect(paths(spec(block({ format })))).toEqual(['blocks[0].format.stations[0].reps.to'])
   })
   it('find a done that runs out in every', () => {
     const done = station({ reps: { list: [3, 2], then: 'done' } })
@@ -234,6 +244,17 @@ describe('cues that cannot come', () => {
     ['any round of rounds', rounds(), { round: 99 }, null],
     ['above the rounds of intervals', intervals, { round: 4 }, 'at.round'],
     ['a station that is not there', intervals, { station: 1 }, 'at.station'],
+    [
+      'above the rungs and rounds of for-time',
+      {
+        type: 'for-time',
+        rounds: 3,
+        cap: 60,
+        stations: [station({ reps: { list: [3, 2, 1], then: 'done' } })],
+      },
+      { round: 4 },
+      'at.round',
+    ],
     ['past times: round 3 of station 1', every, { station: 1, round: 3 }, 'at.round'],
     ['the last of times: round 3 of station 0', every, { station: 0, round: 3 }, null],
     [
@@ -333,6 +354,82 @@ describe('a class as a whole', () => {
       ].sort(),
     )
   })
+  it.each<[string, Json, Json[], string[]]>([
+    [
+      'seconds',
+      rounds({ seconds: -1 }),
+      [cue({ station: 3 }), cue({ from: 'end', s: 9_000 }, { id: 'd' })],
+      ['format.seconds', 'cues[0].at.station'],
+    ],
+    [
+      'a cap',
+      {
+        type: 'for-time',
+        rounds: 4,
+        cap: 0,
+        stations: [station({ reps: { list: [2, 1], then: 'done' } })],
+      },
+      [],
+      ['format.cap', 'format.rounds'],
+    ],
+    [
+      'rounds for time, whose length is its cap',
+      { type: 'for-time', rounds: 0, cap: 60, stations: [station()] },
+      [cue({ from: 'start', s: 61 }), cue({ round: 9 }, { id: 'd' })],
+      ['format.rounds', 'cues[0].at.s'],
+    ],
+    [
+      'rounds, and with them the length',
+      {
+        type: 'intervals',
+        rounds: 'three',
+        stations: [{ movement: 'a', work: 10, rest: 0 }],
+      },
+      [
+        cue({ station: 1 }, { show: { station: 2 } }),
+        cue({ round: 9 }, { id: 'd' }),
+        cue({ from: 'end', s: 900 }, { id: 'e' }),
+      ],
+      ['format.rounds', 'cues[0].at.station', 'cues[0].show.station'],
+    ],
+    [
+      'times',
+      { type: 'every', seconds: 30, times: 1.5, stations: [station(), station()] },
+      [cue({ station: 1, round: 2 }), cue({ station: 2 }, { id: 'd' })],
+      ['format.times', 'cues[1].at.station'],
+    ],
+    [
+      'whether it is counted',
+      rounds({ counted: 'no' }),
+      [cue({ from: 'start', s: 61 })],
+      ['format.counted', 'cues[0].at.s'],
+    ],
+    [
+      'the length of a rest',
+      { type: 'rest', seconds: 0, atLeast: 90, atMost: 30 },
+      [cue({ round: 1 })],
+      ['format.seconds', 'format.atLeast', 'cues[0].at.round'],
+    ],
+  ])('looks past a wrong number at what does not hang on it: %s', (_name, format, cues, found) => {
+    expect(paths(spec(block({ format, cues }))).sort()).toEqual(
+      found.map((path) => `blocks[0].${path}`).sort(),
+    )
+  })
+  it('finds an option named twice beside one that is wrong', () => {
+    const options = [{ option: 'easy' }, { option: 'easy' }, { option: 'Not A Slug' }]
+    const at = 'blocks[0].format.stations[0].options'
+    expect(
+      paths(spec(block({ format: rounds({ stations: [station({ options })] }) }))).sort(),
+    ).toEqual([`${at}[1].option`, `${at}[2].option`])
+  })
+  it('counts a count-in towards 3 hours though something else in its block is wrong', () => {
+    const long = block({ title: '', format: rounds({ seconds: 10_800 }) })
+    expect(paths(spec(long)).sort()).toEqual(['blocks', 'blocks[0].title'])
+    expect(paths(spec({ ...long, countIn: 0 }))).toEqual(['blocks[0].title'])
+  })
+  it('names a key that is no plain word in quotes', () => {
+    expect(paths(spec(block({ 'a b': 1, '': 2 })))).toEqual(['blocks[0]["a b"]', 'blocks[0][""]'])
+  })
   it('guesses no length where a timed station is wrong', () => {
     const format = {
       type: 'intervals',
@@ -388,5 +485,46 @@ describe('a published version', () => {
       expect.arrayContaining(['title', 'movements[1]']),
     )
     expect(read.problems?.some((one) => one.path.startsWith('movements[0].tempo'))).toBe(true)
+  })
+  it.each<[string, unknown, string, RegExp]>([
+    ['no list', 'squat', 'movements', /list of movements/],
+    ['no slug', [{ name: 'Squat' }], 'movements[0].slug', /^This is missing\. Give a name/],
+    ['a wrong slug', [{ slug: 'Squat!' }], 'movements[0].slug', /^Give a name/],
+    [
+      'no time for a rep',
+      [{ slug: 'a', secondsPerRep: 0 }],
+      'movements[0].secondsPerRep',
+      /above 0/,
+    ],
+    ['text as time', [{ slug: 'a', secondsPerRep: '3' }], 'movements[0].secondsPerRep', /above 0/],
+    ['a short tempo', [{ slug: 'a', tempo: [1] }], 'movements[0].tempo', /four figures/],
+    ['a fine change, by slug', { a: { change: 1.25 } }, 'movements.a.change', /one decimal/],
+    ['a long name', [{ slug: 'a', name: 'x'.repeat(61) }], 'movements[0].name', /1 to 60/],
+    ['an unknown pattern', [{ slug: 'a', pattern: 'fly' }], 'movements[0].pattern', /squat, lunge/],
+    ['options that are no list', [{ slug: 'a', options: 'x' }], 'movements[0].options', /list/],
+    ['an option that is none', [{ slug: 'a', options: [7] }], 'movements[0].options[0]', /object/],
+    [
+      'an unknown level',
+      [{ slug: 'a', options: [{ option: 'b', level: 'hard' }] }],
+      'movements[0].options[0].level',
+      /easier, as-planned, harder/,
+    ],
+    [
+      'an option whose ladder stands still',
+      [{ slug: 'a', options: [{ option: 'b', reps: { from: 1, step: 0 } }] }],
+      'movements[0].options[0].reps.step',
+      /step up or down/,
+    ],
+    [
+      'an option twice',
+      [{ slug: 'a', options: [{ option: 'b' }, { option: 'b' }] }],
+      'movements[0].options[1].option',
+      /named twice/,
+    ],
+    ['a movement twice', [{ slug: 'a' }, { slug: 'a' }], 'movements[1].slug', /here twice/],
+  ])('says in words what to do about a movement: %s', (_name, movements, path, message) => {
+    const problems = parseSpecOrVersion({ spec: spec(), movements }).problems ?? []
+    expect(problems.map((one) => one.path)).toEqual([path])
+    expect(problems[0]?.message).toMatch(message)
   })
 })

@@ -21,7 +21,7 @@ describe('reps in a round', () => {
     ['up to a last rung, held', { from: 3, step: 3, to: 9 }, [3, 6, 9, 9, 9]],
     ['up to a value that is no rung', { from: 3, step: 3, to: 10 }, [3, 6, 9, 9]],
     ['up, then again', { from: 3, step: 3, to: 9, then: 'repeat' }, [3, 6, 9, 3, 6]],
-    ['up, then done', { from: 3, step: 3, to: 9, then: 'done' }, [3, 6, 9, null, null]],
+    ['down, then done', { from: 9, step: -3, to: 3, then: 'done' }, [9, 6, 3, null, null]],
     ['down, held', { from: 12, step: -3, to: 3 }, [12, 9, 6, 3, 3]],
     ['down to a value that is no rung', { from: 12, step: -5, to: 1 }, [12, 7, 2, 2]],
     ['one rung', { from: 5, step: 4, to: 5 }, [5, 5]],

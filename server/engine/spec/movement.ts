@@ -1,21 +1,35 @@
 /** A movement as it is frozen into a published version, and the trade's lists that describe one. */
 import { z } from 'zod'
 import { PATTERNS, POSITIONS, IMPACTS, JOINTS, REASONS, LEVELS } from './names'
-import { changeSchema, repsSchema, sidesSchema, slugSchema, tempoSchema } from './schema'
+import {
+  changeSchema,
+  oneOf,
+  repsSchema,
+  sidesSchema,
+  slugSchema,
+  tempoSchema,
+  text,
+} from './schema'
+
+const SECONDS_PER_REP_ERROR = 'Give seconds above 0, 600 at most.'
 
 const timing = {
   /** Over `secondsPerRep` where both are given. */
   tempo: tempoSchema.optional(),
-  secondsPerRep: z.number().positive().max(600).optional(),
+  secondsPerRep: z
+    .number({ error: SECONDS_PER_REP_ERROR })
+    .positive({ error: SECONDS_PER_REP_ERROR })
+    .max(600, { error: SECONDS_PER_REP_ERROR })
+    .optional(),
 }
 
 export const movementOptionSchema = z.object({
   option: slugSchema,
-  name: z.string().min(1).max(60),
-  level: z.enum(LEVELS),
-  reasons: z.array(z.enum(REASONS)),
+  name: text(1, 60),
+  level: oneOf(LEVELS),
+  reasons: z.array(oneOf(REASONS)),
   /** One sentence: what changes. */
-  description: z.string().max(200),
+  description: text(0, 200),
   ...timing,
   reps: repsSchema.optional(),
   sides: sidesSchema.optional(),
@@ -26,23 +40,23 @@ export const movementOptionSchema = z.object({
 
 export const movementSchema = z.object({
   slug: slugSchema,
-  name: z.string().min(1).max(60),
-  pattern: z.enum(PATTERNS),
-  position: z.enum(POSITIONS),
-  impact: z.enum(IMPACTS),
-  joints: z.array(z.enum(JOINTS)),
-  kit: z.array(z.string().min(1).max(60)),
+  name: text(1, 60),
+  pattern: oneOf(PATTERNS),
+  position: oneOf(POSITIONS),
+  impact: oneOf(IMPACTS),
+  joints: z.array(oneOf(JOINTS)),
+  kit: z.array(text(1, 60)),
   ...timing,
   /** Seconds to get from this movement to the station after it. */
   change: changeSchema.optional(),
   figure: slugSchema.optional(),
-  start: z.string().max(300),
-  steps: z.array(z.string().max(200)),
-  cues: z.array(z.string().max(80)),
-  faults: z.array(z.object({ fault: z.string().max(120), correction: z.string().max(160) })),
-  stopWhen: z.string().max(200),
+  start: text(0, 300),
+  steps: z.array(text(0, 200)),
+  cues: z.array(text(0, 80)),
+  faults: z.array(z.object({ fault: text(0, 120), correction: text(0, 160) })),
+  stopWhen: text(0, 200),
   /** Easier first, then as planned, then harder; an `as-planned` one is always among them. */
-  options: z.array(movementOptionSchema).min(1),
+  options: z.array(movementOptionSchema).min(1, { error: 'Give at least one option.' }),
 })
 
 export type Joint = (typeof JOINTS)[number]

@@ -1,14 +1,16 @@
 /** What is wrong with a class, all of it at once, each with its path and what to do. */
-import type { z } from 'zod'
+import { z } from 'zod'
 import { bodySeconds, countInSeconds } from '../timeline/compile'
-import { movementOptionSchema, movementSchema, type Movement } from './movement'
+import { movementSchema, type Movement } from './movement'
 import { AS_PLANNED } from './names'
 import { rungCount } from './reps'
 import {
   anchorSchema,
   blockSchema,
   formatSchema,
+  MOST_ROUNDS,
   MOST_STATIONS,
+  MOST_TIMES,
   repsSchema,
   sessionSpecSchema,
   type Anchor,
@@ -33,6 +35,7 @@ function pathText(path: Path): string {
   let text = ''
   for (const key of path) {
     if (typeof key === 'number') text += `[${key}]`
+    else if (!/^[\w$-]+$/.test(key)) text += `[${JSON.stringify(key)}]`
     else text += text === '' ? key : `.${key}`
   }
   return text
@@ -158,37 +161,39 @@ function checkReps(found: Found, reps: Reps, path: Path): void {
       `A ladder from ${from} in steps of ${step} never comes to ${to}. Turn the step or the ends round.`,
     )
   }
+  if (step > 0 && then === 'done') {
+    found.add(
+      [...path, 'then'],
+      'A ladder that goes up holds or repeats. Choose one of these, or write its rungs as a list that is done.',
+    )
+  }
 }
 
-/** How many rounds a `done` ladder or list lasts; null where it goes on. */
+/** How many rounds a `done` ladder or list lasts; null where it goes on, or is no sound ladder. */
 function rungsUntilDone(reps: Reps): number | null {
-  return typeof reps !== 'number' && reps.then === 'done' ? rungCount(reps) : null
+  if (typeof reps === 'number' || reps.then !== 'done') return null
+  const found = new Found()
+  checkReps(found, reps, [])
+  return found.problems.length > 0 ? null : rungCount(reps)
+}
+
+function counted(count: number, one: string): string {
+  return `${count} ${one}${count === 1 ? '' : 's'}`
 }
 
 /** Every reps of a format's stations, their options' own among them, with its path under the format. */
 function everyReps(format: unknown): { reps: unknown; path: Path; station: number }[] {
   if (!isObject(format) || !Array.isArray(format['stations'])) return []
-  return format['stations'].flatMap((station: unknown, index) => {
-    if (!isObject(station)) return []
-    const own =
-      'reps' in station
-        ? [{ reps: station['reps'], path: ['stations', index, 'reps'], station: index }]
-        : []
-    const options = Array.isArray(station['options']) ? station['options'] : []
-    return [
-      ...own,
-      ...options.flatMap((option: unknown, place) =>
-        isObject(option) && 'reps' in option
-          ? [
-              {
-                reps: option['reps'],
-                path: ['stations', index, 'options', place, 'reps'],
-                station: index,
-              },
-            ]
-          : [],
-      ),
-    ]
+  return format['stations'].flatMap((raw: unknown, station) => {
+    if (!isObject(raw)) return []
+    const path: Path = ['stations', station]
+    const own = 'reps' in raw ? [{ reps: raw['reps'], path: [...path, 'reps'], station }] : []
+    const ofOptions = optionReps(raw['options']).map(({ reps, place }) => ({
+      reps,
+      path: [...path, 'options', place, 'reps'],
+      station,
+    }))
+    return [...own, ...ofOptions]
   })
 }
 
@@ -200,8 +205,8 @@ function checkLadders(found: Found, format: unknown, path: Path): void {
 }
 
 /** `done` that runs out where a set number of rounds is asked. */
-function checkRungs(found: Found, format: Format, path: Path): void {
-  if (format.type !== 'for-time' && format.type !== 'every') return
+function checkRungs(found: Found, { format, hasRounds }: ReadFormat, path: Path): void {
+  if (!hasRounds || (format.type !== 'for-time' && format.type !== 'every')) return
   for (const one of everyReps(format)) {
     const parsed = repsSchema.safeParse(one.reps)
     const rungs = parsed.success ? rungsUntilDone(parsed.data) : null
@@ -209,7 +214,7 @@ function checkRungs(found: Found, format: Format, path: Path): void {
     if (format.type === 'for-time' && format.rounds > rungs) {
       found.add(
         [...path, 'rounds'],
-        `Station ${one.station} has ${rungs} rungs and is then done. Ask for ${rungs} rounds at most, or let the ladder hold or repeat.`,
+        `Station ${one.station} has ${counted(rungs, 'rung')} and is then done. Ask for ${counted(rungs, 'round')} at most, or let its reps hold or repeat.`,
       )
     }
     if (format.type === 'every') {
@@ -217,32 +222,47 @@ function checkRungs(found: Found, format: Format, path: Path): void {
       if (visits > rungs) {
         found.add(
           [...path, ...one.path],
-          `This station comes ${visits} times and has ${rungs} rungs. Let the ladder hold or repeat, or give fewer times.`,
+          `This station comes ${counted(visits, 'time')} and has ${counted(rungs, 'rung')}. Let its reps hold or repeat, or give fewer times.`,
         )
       }
     }
   }
 }
 
-function checkOptions(found: Found, format: Format, path: Path): void {
-  if (format.type === 'rest') return
-  format.stations.forEach((station, index) => {
-    const seen = new Set<string>()
-    station.options?.forEach((use, place) => {
-      if (seen.has(use.option)) {
-        found.add(
-          [...path, 'stations', index, 'options', place, 'option'],
-          `The option ${use.option} is named twice. Name it once.`,
-        )
-      }
-      seen.add(use.option)
-    })
+/** An option named twice in a list of options, whatever else is in it. */
+function checkOptionNames(found: Found, options: unknown, path: Path): void {
+  if (!Array.isArray(options)) return
+  const seen = new Set<string>()
+  options.forEach((use: unknown, place) => {
+    const option = isObject(use) ? use['option'] : undefined
+    if (typeof option !== 'string') return
+    if (seen.has(option)) {
+      found.add([...path, place, 'option'], `The option ${option} is named twice. Name it once.`)
+    }
+    seen.add(option)
   })
 }
 
-function checkRest(found: Found, format: Format, path: Path): void {
+function checkOptions(found: Found, format: unknown, path: Path): void {
+  if (!isObject(format) || !Array.isArray(format['stations'])) return
+  format['stations'].forEach((station: unknown, index) => {
+    const options = isObject(station) ? station['options'] : undefined
+    checkOptionNames(found, options, [...path, 'stations', index, 'options'])
+  })
+}
+
+function checkRest(found: Found, { format, seconds }: ReadFormat, path: Path): void {
   if (format.type !== 'rest') return
-  const { seconds, atLeast, atMost } = format
+  const { atLeast, atMost } = format
+  if (seconds === null) {
+    if (atLeast !== undefined && atMost !== undefined && atLeast > atMost) {
+      found.add(
+        [...path, 'atLeast'],
+        `The least time is longer than the most. Give ${atMost} or less.`,
+      )
+    }
+    return
+  }
   if (atLeast !== undefined && atLeast > seconds) {
     found.add(
       [...path, 'atLeast'],
@@ -274,7 +294,7 @@ function neverComes(
   if (!isThere) {
     whys.push({
       key: 'station',
-      why: `The block has ${count} stations, counted from 0: give ${count - 1} at most.`,
+      why: `The block has ${counted(count, 'station')}, counted from 0: give ${count - 1} at most.`,
     })
   } else if (most === 0) {
     return [{ key: 'station', why: 'This station never comes in so few times.' }]
@@ -285,12 +305,17 @@ function neverComes(
   return whys
 }
 
+function fewestRungs(stations: readonly { reps: Reps }[]): number {
+  return Math.min(...stations.map((one) => rungsUntilDone(one.reps) ?? Infinity))
+}
+
 /** The last round in which a station comes. */
 function mostRounds(format: Exclude<Format, { type: 'rest' }>, station: number): number {
   switch (format.type) {
     case 'rounds':
-      return Math.min(...format.stations.map((one) => rungsUntilDone(one.reps) ?? Infinity))
+      return fewestRungs(format.stations)
     case 'for-time':
+      return Math.min(format.rounds, fewestRungs(format.stations))
     case 'intervals':
       return format.rounds
     case 'holds':
@@ -300,19 +325,13 @@ function mostRounds(format: Exclude<Format, { type: 'rest' }>, station: number):
   }
 }
 
-/** `length`: seconds of the body, null where a shape that is wrong leaves it open. */
-function checkCues(
-  found: Found,
-  format: Format,
-  length: number | null,
-  cues: unknown,
-  path: Path,
-): void {
+function checkCues(found: Found, read: ReadFormat, cues: unknown, path: Path): void {
   if (!Array.isArray(cues)) return
+  const { format } = read
   cues.forEach((cue: unknown, index) => {
     if (!isObject(cue)) return
     const anchor = anchorSchema.safeParse(cue['at'])
-    if (anchor.success) checkAnchor(found, format, length, anchor.data, [...path, index, 'at'])
+    if (anchor.success) checkAnchor(found, read, anchor.data, [...path, index, 'at'])
     const station = valueAt(cue, ['show', 'station'])
     const stations = format.type === 'rest' ? 0 : format.stations.length
     if (typeof station === 'number' && station >= stations && station < MOST_STATIONS) {
@@ -320,22 +339,16 @@ function checkCues(
         [...path, index, 'show', 'station'],
         stations === 0
           ? 'A rest has no station to show. Remove ‘show’.'
-          : `The block has ${stations} stations, counted from 0: give ${stations - 1} at most.`,
+          : `The block has ${counted(stations, 'station')}, counted from 0: give ${stations - 1} at most.`,
       )
     }
   })
 }
 
-function checkAnchor(
-  found: Found,
-  format: Format,
-  length: number | null,
-  at: Anchor,
-  path: Path,
-): void {
+function checkAnchor(found: Found, { format, seconds }: ReadFormat, at: Anchor, path: Path): void {
   if ('from' in at) {
-    if (length !== null && at.s > length) {
-      found.add([...path, 's'], `The block is ${length} s long. Give ${length} or less.`)
+    if (seconds !== null && at.s > seconds) {
+      found.add([...path, 's'], `The block is ${seconds} s long. Give ${seconds} or less.`)
     }
     return
   }
@@ -362,29 +375,72 @@ function standIn(type: unknown, station: unknown): unknown {
   return { movement: 'unknown', reps: reps?.success ? reps.data : 1 }
 }
 
+/** A format as far as it can be read. */
+interface ReadFormat {
+  format: Format
+  /** Of the body; null where what is wrong leaves it open. */
+  seconds: number | null
+  /** False where `rounds` or `times` is wrong, so that the most that the shape allows stands there. */
+  hasRounds: boolean
+}
+
+/** In place of a number that is wrong, so that the rules can look at what is beside it. */
+const STAND_IN_NUMBERS: Readonly<Record<string, number>> = {
+  seconds: 1,
+  cap: 1,
+  rounds: MOST_ROUNDS,
+  times: MOST_TIMES,
+}
+
+/** What a body's length comes from, beside its stations; but a time cap is as long whatever its rounds. */
+const LENGTH_KEYS: ReadonlySet<string> = new Set(['seconds', 'cap', 'rounds', 'roundRest', 'times'])
+
 /**
- * A format as far as it can be read: without what does not belong there, with a stand-in for each
- * station that is wrong. `isWhole` where nothing had to be changed.
+ * Without what does not belong there, and with a stand-in for each number and station that is wrong;
+ * null where not even its type can be told, or it has no stations.
  */
-function readFormat(raw: unknown): { format: Format; isWhole: boolean } | null {
+function readFormat(raw: unknown): ReadFormat | null {
   const parsed = formatSchema.safeParse(raw)
-  if (parsed.success) return { format: parsed.data, isWhole: true }
+  if (parsed.success) {
+    return { format: parsed.data, seconds: bodySeconds(parsed.data), hasRounds: true }
+  }
   if (!isObject(raw)) return null
   const mended: Record<string, unknown> = { ...raw }
   const stations: unknown[] = Array.isArray(raw['stations']) ? [...raw['stations']] : []
+  let hasSeconds = true
+  let hasRounds = true
   for (const issue of parsed.error.issues) {
     const [key, index] = issue.path
-    if (key === 'stations' && typeof index === 'number') {
+    if (key === undefined) {
+      if (issue.code === 'unrecognized_keys') for (const one of issue.keys) delete mended[one]
+    } else if (key === 'stations') {
+      if (typeof index !== 'number') return null
       stations[index] = standIn(raw['type'], stations[index])
-    } else if (key === undefined && issue.code === 'unrecognized_keys') {
-      for (const unknown of issue.keys) delete mended[unknown]
-    } else if (key !== undefined && key !== 'stations') {
-      delete mended[String(key)]
+      if (raw['type'] === 'intervals' || raw['type'] === 'holds') hasSeconds = false
+    } else {
+      const name = String(key)
+      delete mended[name]
+      const number = STAND_IN_NUMBERS[name]
+      if (number !== undefined) mended[name] = number
+      if (name === 'rounds' || name === 'times') hasRounds = false
+      const isCapped = name === 'rounds' && raw['type'] === 'for-time'
+      if (LENGTH_KEYS.has(name) && !isCapped) hasSeconds = false
     }
   }
   if ('stations' in mended) mended['stations'] = stations
   const again = formatSchema.safeParse(mended)
-  return again.success ? { format: again.data, isWhole: false } : null
+  if (!again.success) return null
+  return { format: again.data, seconds: hasSeconds ? bodySeconds(again.data) : null, hasRounds }
+}
+
+/** What a block's count-in depends on, its brief apart. */
+const countInSchema = z.object({ kind: blockSchema.shape.kind, countIn: blockSchema.shape.countIn })
+
+function readCountInSeconds(raw: Record<string, unknown>, isAfterRest: boolean): number {
+  const head = countInSchema.safeParse(raw)
+  if (!head.success) return 0
+  const brief = raw['brief'] === undefined ? {} : { brief: '' }
+  return countInSeconds({ ...head.data, ...brief }, isAfterRest)
 }
 
 function checkRules(found: Found, spec: unknown): void {
@@ -396,20 +452,16 @@ function checkRules(found: Found, spec: unknown): void {
     if (!isObject(raw)) return
     const path: Path = ['blocks', index]
     checkLadders(found, raw['format'], [...path, 'format'])
+    checkOptions(found, raw['format'], [...path, 'format'])
     checkUnique(found, raw['cues'], [...path, 'cues'], 'Another cue of this block')
     const read = readFormat(raw['format'])
     if (read) {
-      const { format, isWhole } = read
-      const isTimedByStations = format.type === 'intervals' || format.type === 'holds'
-      const length = isWhole || !isTimedByStations ? bodySeconds(format) : null
-      checkRungs(found, format, [...path, 'format'])
-      checkOptions(found, format, [...path, 'format'])
-      checkRest(found, format, [...path, 'format'])
-      checkCues(found, format, length, raw['cues'], [...path, 'cues'])
-      seconds += length ?? 0
+      checkRungs(found, read, [...path, 'format'])
+      checkRest(found, read, [...path, 'format'])
+      checkCues(found, read, raw['cues'], [...path, 'cues'])
+      seconds += read.seconds ?? 0
     }
-    const block = blockSchema.safeParse(raw)
-    if (block.success) seconds += countInSeconds(block.data, isAfterRest)
+    seconds += readCountInSeconds(raw, isAfterRest)
     isAfterRest = raw['kind'] === 'rest' || read?.format.type === 'rest'
   })
   if (seconds > MOST_CLASS_SECONDS) {
@@ -471,24 +523,45 @@ function readMovements(raw: unknown): { movements: Movement[]; problems: Problem
     found.add(['movements'], 'Give a list of movements, or an object by their slugs.')
     return { movements, problems: found.problems }
   }
+  const slugs = new Set<string>()
   for (const [key, value] of Array.isArray(raw) ? raw.entries() : Object.entries(raw)) {
+    const path: Path = ['movements', key]
     if (!isObject(value)) {
-      found.add(['movements', key], 'Give an object.')
+      found.add(path, 'Give an object.')
       continue
     }
-    const slug = value['slug'] ?? key
-    const filled = {
-      ...BLANK,
-      name: String(slug),
-      ...value,
-      slug,
-      options: filledOptions(value['options']),
-    }
+    const slug = value['slug'] ?? (typeof key === 'string' ? key : undefined)
+    const options = filledOptions(value['options'])
+    const filled = { ...BLANK, name: nameFrom(slug), ...value, slug, options }
     const parsed = movementSchema.safeParse(filled)
     if (parsed.success) movements.push(parsed.data)
-    else for (const issue of parsed.error.issues) addIssue(found, filled, issue, ['movements', key])
+    else {
+      const root = { movements: { [key]: filled } }
+      for (const issue of parsed.error.issues) addIssue(found, root, issue, path)
+    }
+    checkOptionNames(found, value['options'], [...path, 'options'])
+    for (const one of optionReps(value['options'])) {
+      const reps = repsSchema.safeParse(one.reps)
+      if (reps.success) checkReps(found, reps.data, [...path, 'options', one.place, 'reps'])
+    }
+    if (typeof slug !== 'string') continue
+    if (slugs.has(slug))
+      found.add([...path, 'slug'], `The movement ${slug} is here twice. Give it once.`)
+    slugs.add(slug)
   }
   return { movements, problems: found.problems }
+}
+
+function optionReps(options: unknown): { reps: unknown; place: number }[] {
+  if (!Array.isArray(options)) return []
+  return options.flatMap((option: unknown, place) =>
+    isObject(option) && 'reps' in option ? [{ reps: option['reps'], place }] : [],
+  )
+}
+
+/** A name where a file made by hand gives none. */
+function nameFrom(slug: unknown): string {
+  return typeof slug === 'string' && slug !== '' ? slug.slice(0, 60) : '?'
 }
 
 const BLANK = {
@@ -517,14 +590,8 @@ function filledOptions(raw: unknown): unknown {
   const options = raw.map((option: unknown) => {
     if (!isObject(option)) return option
     const slug = option['option'] ?? option['slug']
-    const filled = {
-      ...planned,
-      level: slug === AS_PLANNED ? 'as-planned' : 'easier',
-      name: String(slug),
-      ...option,
-      option: slug,
-    }
-    return movementOptionSchema.safeParse(filled).success ? filled : option
+    const level = slug === AS_PLANNED ? 'as-planned' : 'easier'
+    return { ...planned, level, name: nameFrom(slug), ...option, option: slug }
   })
   const hasPlanned = options.some((option) => isObject(option) && option['level'] === 'as-planned')
   return hasPlanned ? options : [...options, planned]

@@ -14,8 +14,8 @@ function grouped(value: number): string {
 }
 
 /** Text by its characters as people count them, not by UTF-16 units. */
-const text = (min: number, max: number) => {
-  const error = `Give text of ${min} to ${max} characters.`
+export const text = (min: number, max: number) => {
+  const error = `Give text of ${min === 0 ? 'at most' : `${min} to`} ${max} characters.`
   return z.string({ error }).refine(
     (value) => {
       const length = [...value].length
@@ -35,7 +35,7 @@ const tenths = (min: number, max: number) => {
     .refine((value) => Math.abs(value * 10 - Math.round(value * 10)) < 1e-9, { error })
 }
 
-const oneOf = <const T extends readonly [string, ...string[]]>(values: T) =>
+export const oneOf = <const T extends readonly [string, ...string[]]>(values: T) =>
   z.enum(values, { error: `Choose one of: ${values.join(', ')}.` })
 const list = <T extends z.ZodType>(item: T, min: number, max: number, what: string) => {
   const error = `Give ${min === 0 ? 'at most' : `${min} to`} ${max} ${what}.`
@@ -115,6 +115,8 @@ export const holdStationSchema = z.strictObject({
 
 /** The most that a block can have. */
 export const MOST_STATIONS = 12
+export const MOST_ROUNDS = 100
+export const MOST_TIMES = 180
 const stations = <T extends z.ZodType>(station: T) => list(station, 1, MOST_STATIONS, 'stations')
 
 export const formatSchema = z.discriminatedUnion('type', [
@@ -126,20 +128,20 @@ export const formatSchema = z.discriminatedUnion('type', [
   }),
   z.strictObject({
     type: z.literal('for-time'),
-    rounds: whole(1, 100),
+    rounds: whole(1, MOST_ROUNDS),
     cap: whole(1, 10_800),
     stations: stations(stationSchema),
   }),
   z.strictObject({
     type: z.literal('intervals'),
-    rounds: whole(1, 100),
+    rounds: whole(1, MOST_ROUNDS),
     stations: stations(intervalStationSchema),
     roundRest: whole(0, 3_600).optional(),
   }),
   z.strictObject({
     type: z.literal('every'),
     seconds: whole(1, 10_800),
-    times: whole(1, 180),
+    times: whole(1, MOST_TIMES),
     stations: stations(stationSchema),
   }),
   z.strictObject({ type: z.literal('holds'), stations: stations(holdStationSchema) }),

@@ -7,8 +7,6 @@ const OWN_NEXT_WINDOW_MS = 20_000
 const ANNOUNCE_BEFORE_MS = 15_000
 const LONG_MS = 30_000
 
-const RANK = { beep: 0, call: 1, cue: 2, next: 3 } as const
-
 /** Whether a block's rounds are the member's own, so that round and station anchors wait for them. */
 export function isMembersOwnPace(block: Block): boolean {
   return block.format.type === 'rounds' || block.format.type === 'for-time'
@@ -22,58 +20,56 @@ function secondsOf(segment: Segment): number {
   return (segment.endMs - segment.startMs) / 1_000
 }
 
+const NO_CALLS: readonly number[] = []
+const SHORT_BEEPS: readonly number[] = [3, 2, 1]
+const LONG_BEEPS: readonly number[] = [5, 4, 3, 2, 1]
+
 /** Seconds left at which a segment of `length` seconds is called; the half apart. */
-function callsFor(length: number): number[] {
-  if (length < 10) return []
-  if (length < 30) return length > 15 ? [10] : []
-  if (length < 120) return length > 45 ? [30, 10] : [10]
+function callsFor(length: number): readonly number[] {
+  if (length <= 15) return NO_CALLS
+  if (length <= 45) return [10]
+  if (length < 120) return [30, 10]
   return Math.abs(60 - length / 2) > 5 ? [60, 30, 10] : [30, 10]
 }
 
+/** In order of time, a beep before a call of its moment. */
 function addTimeMarks(marks: Mark[], segment: Segment, following: Segment | undefined): void {
+  const { endMs } = segment
   const length = secondsOf(segment)
-  const at = (left: number) => segment.endMs - left * 1_000
-  const inside = (left: number) => left < length
   if (length >= 120) {
     const left = length / 2
-    marks.push({ atMs: at(left), what: 'beep', sound: 'double' })
-    marks.push({ atMs: at(left), what: 'call', left, half: true })
+    const atMs = endMs - left * 1_000
+    marks.push({ atMs, what: 'beep', sound: 'double' })
+    marks.push({ atMs, what: 'call', left, half: true })
   }
-  for (const left of callsFor(length)) {
-    if (inside(left) && !(length >= 120 && left === length / 2)) {
-      marks.push({ atMs: at(left), what: 'call', left })
-    }
+  for (const left of callsFor(length))
+    marks.push({ atMs: endMs - left * 1_000, what: 'call', left })
+  for (const left of length < 30 ? SHORT_BEEPS : LONG_BEEPS) {
+    if (left < length) marks.push({ atMs: endMs - left * 1_000, what: 'beep', sound: 'short' })
   }
-  for (const left of length < 30 ? [3, 2, 1] : [5, 4, 3, 2, 1]) {
-    if (inside(left)) marks.push({ atMs: at(left), what: 'beep', sound: 'short' })
-  }
-  marks.push({
-    atMs: segment.endMs,
-    what: 'beep',
-    sound: following?.kind === 'work' ? 'start' : 'end',
-  })
+  marks.push({ atMs: endMs, what: 'beep', sound: following?.kind === 'work' ? 'start' : 'end' })
 }
 
-/** Class time of a cue with a fixed moment; null where it has none, or none that comes. */
-function fixedMoment(at: Anchor, body: readonly Segment[], ownPace: boolean): number | null {
-  const first = body[0]
-  const last = body.at(-1)
-  if (!first || !last) return null
-  if ('from' in at)
-    return at.from === 'start' ? first.startMs + at.s * 1_000 : last.endMs - at.s * 1_000
-  if (ownPace) return null
-  const round = at.round ?? 1
-  const station = 'station' in at ? at.station : undefined
-  const work = body.find(
-    (one) =>
-      one.kind === 'work' &&
-      one.round === round &&
-      (station === undefined || one.station === station),
-  )
-  return work ? work.startMs : null
+/** A round, or a station of it, as one number: a block has far fewer stations than the factor. */
+function placeKey(round: number, station = -1): number {
+  return round * 1_000 + station + 1
+}
+
+/** Where each round, and each station of it, first begins in a body. */
+function firstWork(body: readonly Segment[]): Map<number, number> {
+  const starts = new Map<number, number>()
+  for (const { kind, round, station, startMs } of body) {
+    if (kind !== 'work' || round === undefined) continue
+    const ofRound = placeKey(round)
+    if (!starts.has(ofRound)) starts.set(ofRound, startMs)
+    const ofStation = placeKey(round, station)
+    if (!starts.has(ofStation)) starts.set(ofStation, startMs)
+  }
+  return starts
 }
 
 interface CueMoments {
+  /** In order of time; of one moment as written. */
   marks: Mark[]
   /** Moments of cues of kind `next`, by block. */
   ownNext: Map<string, number[]>
@@ -83,16 +79,28 @@ function cueMarks(spec: SessionSpec, bodies: Map<string, Segment[]>): CueMoments
   const marks: Mark[] = []
   const ownNext = new Map<string, number[]>()
   for (const block of spec.blocks) {
-    const body = bodies.get(block.id) ?? []
-    const ownPace = isMembersOwnPace(block)
-    for (const cue of block.cues ?? []) {
-      const atMs = fixedMoment(cue.at, body, ownPace)
-      if (atMs === null) continue
-      marks.push({ atMs, what: 'cue', block: block.id, id: cue.id })
-      if (cue.kind === 'next') ownNext.set(block.id, [...(ownNext.get(block.id) ?? []), atMs])
+    const body = bodies.get(block.id)
+    const startMs = body?.[0]?.startMs
+    const endMs = body?.at(-1)?.endMs
+    if (!block.cues || !body || startMs === undefined || endMs === undefined) continue
+    const nextMoments: number[] = []
+    let starts: Map<number, number> | undefined
+    const momentOf = (at: Anchor): number | undefined => {
+      if ('from' in at) return at.from === 'start' ? startMs + at.s * 1_000 : endMs - at.s * 1_000
+      if (isMembersOwnPace(block)) return undefined
+      starts ??= firstWork(body)
+      return starts.get(placeKey(at.round ?? 1, 'station' in at ? at.station : undefined))
     }
+    for (const cue of block.cues) {
+      const atMs = momentOf(cue.at)
+      if (atMs === undefined) continue
+      marks.push({ atMs, what: 'cue', block: block.id, id: cue.id })
+      if (cue.kind === 'next') nextMoments.push(atMs)
+    }
+    if (nextMoments.length > 0) ownNext.set(block.id, nextMoments)
   }
-  return { marks, ownNext }
+  // Array.prototype.sort is stable, so cues of one moment stay as written.
+  return { marks: marks.sort((a, b) => a.atMs - b.atMs), ownNext }
 }
 
 function announcement(
@@ -107,13 +115,14 @@ function announcement(
     (ms) => ms >= segment.endMs - OWN_NEXT_WINDOW_MS && ms < segment.endMs,
   )
   if (covered) return null
-  return {
+  const mark: Mark = {
     atMs: isLong ? segment.endMs - ANNOUNCE_BEFORE_MS : segment.startMs,
     what: 'next',
     block: announced.block,
-    ...(announced.round === undefined ? {} : { round: announced.round }),
-    ...(announced.station === undefined ? {} : { station: announced.station }),
   }
+  if (announced.round !== undefined) mark.round = announced.round
+  if (announced.station !== undefined) mark.station = announced.station
+  return mark
 }
 
 /**
@@ -130,7 +139,6 @@ export function marksOf(segments: readonly Segment[], spec: SessionSpec): Mark[]
     else bodies.set(segment.block, [segment])
   }
   const cues = cueMarks(spec, bodies)
-  const marks: Mark[] = []
   const announcements: Mark[] = []
   let announced: Segment | undefined
   for (let index = segments.length - 1; index >= 0; index -= 1) {
@@ -142,11 +150,27 @@ export function marksOf(segments: readonly Segment[], spec: SessionSpec): Mark[]
     }
     if (segment.kind === 'work' || segment.kind === 'rest') announced = segment
   }
+  const timeMarks: Mark[] = []
   segments.forEach((segment, index) => {
-    if (segment.kind !== 'brief') addTimeMarks(marks, segment, segments[index + 1])
+    if (segment.kind !== 'brief') addTimeMarks(timeMarks, segment, segments[index + 1])
   })
-  // Array.prototype.sort is stable, so cues of one moment stay as written.
-  return [...marks, ...cues.marks, ...announcements].sort(
-    (a, b) => a.atMs - b.atMs || RANK[a.what] - RANK[b.what],
-  )
+  return merged(merged(timeMarks, cues.marks), announcements.reverse())
+}
+
+/** Two lists in order of time as one; of one moment those of `first` stand before those of `second`. */
+function merged(first: readonly Mark[], second: readonly Mark[]): Mark[] {
+  const marks: Mark[] = []
+  let index = 0
+  for (const mark of first) {
+    for (let one = second[index]; one && one.atMs < mark.atMs; one = second[index]) {
+      marks.push(one)
+      index += 1
+    }
+    marks.push(mark)
+  }
+  for (; index < second.length; index += 1) {
+    const one = second[index]
+    if (one) marks.push(one)
+  }
+  return marks
 }
