@@ -1,7 +1,8 @@
 /** What `npm run bench` measures and shows; see bench.mjs. */
 import { performance } from 'node:perf_hooks'
 import { demoMovements } from '@/db/seed/movements'
-import { forecast, TIRING } from '@/server/engine/pace/forecast'
+import { forecast } from '@/server/engine/pace/forecast'
+import { TIRING } from '@/server/engine/pace/walk'
 import { check } from '@/server/engine/spec/problems'
 import type { Block, Cue } from '@/server/engine/spec/schema'
 import type { PublishedVersion } from '@/server/engine/spec/version'

@@ -6,12 +6,8 @@ import { rungWindow } from '@/components/lane/rung-window'
 import { paths } from '@/server/contract/paths'
 import { HURT_PLACE_TEXT } from '@/server/engine/fit/hurt'
 import { CR10_ANCHORS, RPE_QUESTION } from '@/server/engine/load/session-rpe'
-import {
-  forecast,
-  lastForecastRound,
-  TIRING,
-  type BlockForecast,
-} from '@/server/engine/pace/forecast'
+import { forecast, lastForecastRound, type BlockForecast } from '@/server/engine/pace/forecast'
+import { TIRING } from '@/server/engine/pace/walk'
 import type { Block } from '@/server/engine/spec/schema'
 import type { HurtPlace } from '@/server/engine/tally/events'
 import { HURT_PLACES } from '@/server/engine/tally/names'

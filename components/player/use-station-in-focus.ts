@@ -1,7 +1,7 @@
 'use client'
 import { useState } from 'react'
 import { blockPlan } from '@/server/engine/pace/block-plan'
-import { expectedStationStartMs } from '@/server/engine/pace/forecast'
+import { expectedStationStartMs } from '@/server/engine/pace/walk'
 import type { Position, Run } from '@/server/engine/timeline/run-types'
 import { usePlayer } from './player-context'
 

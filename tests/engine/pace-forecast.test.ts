@@ -1,13 +1,8 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { blockPlan } from '@/server/engine/pace/block-plan'
-import {
-  TIRING,
-  expectedStationStartMs,
-  forecast,
-  lastForecastRound,
-  rungs,
-} from '@/server/engine/pace/forecast'
+import { forecast, lastForecastRound, rungs } from '@/server/engine/pace/forecast'
+import { TIRING, expectedStationStartMs } from '@/server/engine/pace/walk'
 import type { Format, Reps, Sides, Station, Tempo } from '@/server/engine/spec/schema'
 import { block, press, squat, versionOf } from './classes'
 

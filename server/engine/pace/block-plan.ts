@@ -15,12 +15,15 @@ export interface PaceDefaults {
   /** Where neither station nor movement has a tempo. Seconds a rep. */
   tempoSeconds?: number | undefined
   changeSeconds?: number | undefined
+  /** Seconds a rep by `movement/option`, as a gym's results have taught; not over a station's own tempo. */
+  learnt?: ReadonlyMap<string, number> | undefined
 }
 
-interface StationPlan {
+export interface StationPlan {
   movement: string
   /** Reps of round `round` (from 1), both sides counted where they are done in turn. */
   repsIn(round: number): number
+  sides: Sides
   secondsPerRep: number
   /** To get from here to the next station. */
   changeSeconds: number
@@ -87,7 +90,8 @@ export function stationPlan(
   return {
     movement: station.movement,
     repsIn: (round) => factor * (repsInRound(reps, round) ?? 0),
-    secondsPerRep: secondsPerRep(station, option, movement, defaults),
+    sides,
+    secondsPerRep: secondsPerRep(station, slug, option, movement, defaults),
     changeSeconds:
       station.change ??
       option?.change ??
@@ -105,12 +109,14 @@ function tempoSeconds(tempo: Tempo | undefined): number | undefined {
 
 function secondsPerRep(
   station: Station,
+  slug: string,
   option: MovementOption | undefined,
   movement: Movement | undefined,
   defaults: PaceDefaults,
 ): number {
   const seconds =
     tempoSeconds(station.tempo) ??
+    defaults.learnt?.get(`${station.movement}/${slug}`) ??
     tempoSeconds(option?.tempo) ??
     option?.secondsPerRep ??
     tempoSeconds(movement?.tempo) ??

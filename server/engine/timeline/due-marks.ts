@@ -1,5 +1,5 @@
 /** Marks of a run as they fall due on the clock of `now`. */
-import { expectedStationStartMs } from '../pace/forecast'
+import { expectedStationStartMs } from '../pace/walk'
 import { isLive } from './edits'
 import { briefLengthMs, lowestUndone, planOf } from './place'
 import type { DueMark, Place, Run } from './run-types'
