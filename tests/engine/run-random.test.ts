@@ -158,7 +158,9 @@ function commandOf(random: () => number, player: Player): Command {
   return pick<Command>([
     { type: 'log-round', by: 'member' },
     { type: 'log-round', by: 'member' },
-    { type: 'log-round', by: 'lead' },
+    { type: 'follow-lead', logs: random() < 0.6, ...(random() < 0.5 ? { station: 1 } : {}) },
+    { type: 'follow-lead', logs: true },
+    { type: 'leave-lead' },
     { type: 'undo-round' },
     { type: 'pause' },
     { type: 'resume' },
@@ -196,7 +198,12 @@ function play(seed: number): Played {
   const random = randomOf(seed)
   const player = new Player(random() < 0.3, random() < 0.3 ? 4_000 : 0)
   const played: Played = { seed, player, broken: [], reloads: [] }
-  player.send({ type: 'start', versionId: 'v1', counting: 'press', options: [] })
+  player.send({
+    type: 'start',
+    versionId: 'v1',
+    counting: random() < 0.4 ? 'lead' : 'press',
+    options: [],
+  })
   let before = positionAt(player.run, player.now)
   for (let step = 0; step < 3_000; step += 1) {
     player.tick(random() < 0.9 ? Math.floor(random() * 400) : Math.floor(random() * 5_000))
@@ -232,6 +239,11 @@ describe('random sequences of commands', () => {
     expect(types).toContain('rest-taken')
     expect(types).toContain('block-finished')
     expect(types).toContain('rest-cut')
+    expect(types).toContain('lead-followed')
+    const byLead = ALL.flatMap(({ player }) =>
+      player.events.filter((event) => event.type === 'round-done' && event.by === 'lead'),
+    )
+    expect(byLead.length).toBeGreaterThan(50)
   })
 
   it('leave only events that the door of the server lets in', () => {

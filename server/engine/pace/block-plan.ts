@@ -61,7 +61,7 @@ export function blockPlan(
  * How many rounds can come: those of `for-time`; in `rounds` the fewest rungs of the planned ladders
  * that end with `done`, else Infinity. Null for every other format.
  */
-export function roundLimit({ format }: Block): number | null {
+export function roundLimit({ format }: Pick<Block, 'format'>): number | null {
   if (format.type === 'for-time') return format.rounds
   if (format.type !== 'rounds') return null
   return Math.min(...format.stations.map((station) => endsAfter(station.reps)))

@@ -1,12 +1,14 @@
 /** What each command does at a position, or why it does nothing. */
-import { roundReps, type BlockPlan } from '../pace/block-plan'
+import { roundLimit, roundReps, type BlockPlan } from '../pace/block-plan'
 import { AS_PLANNED } from '../spec/names'
 import { optionsOf } from '../spec/options'
 import type { Block } from '../spec/schema'
 import { HURT_PLACES, STOP_SIGNS } from '../tally/names'
 import { withEdit } from './edits'
 import { at, editedTimeline, reduce } from './facts'
-import { advance, lowestUndone, planOf, stationsOf, wholeMs } from './place'
+import { leadOwes, ownPlace } from './lead-run'
+import { lowestUndone, planOf } from './own-rounds'
+import { advance, stationsOf, wholeMs } from './place'
 import type { Command, Effect, EventDraft, Position, Run, RunBlock } from './run-types'
 
 /** A second press within this time is one press. */
@@ -53,6 +55,26 @@ function settleRest(step: Step, classMs: number): void {
   step.run = { ...step.run, resting: null }
 }
 
+/** Logs the rounds that a followed lead has completed, each at its own instant; true where there were any. */
+export function logLeadRounds(step: Step, position: Position, now: number): boolean {
+  if (step.run.ended) return false
+  let isAny = false
+  step.run.version.spec.blocks.forEach((block, index) => {
+    if (index > position.blockIndex) return
+    for (const { round, classMs } of leadOwes(step.run, index, position.classMs)) {
+      isAny = true
+      emit(step, { type: 'round-done', classMs, block: block.id, round, by: 'lead' })
+      step.effects = [{ type: 'sound', sound: 'logged' }]
+      step.run = { ...step.run, lastLogged: { block: block.id, round, atMs: now } }
+      const isLast = lastRound(step, index) === round
+      if (!isLast || block.format.type !== 'for-time') continue
+      const bodyStartMs = step.run.timeline.blocks[index]?.bodyStartMs ?? 0
+      finish(step, classMs, classMs - bodyStartMs, block.id)
+    }
+  })
+  return isAny
+}
+
 const NOT_STARTED = 'The class has not started yet.'
 const IS_OVER = 'The class is over.'
 const IS_PAUSED = 'The class is paused. Go on first.'
@@ -75,6 +97,8 @@ export function carryOut(
   if (position.owed) settleRest(step, classMs)
 
   switch (command.type) {
+    case 'log-lead-rounds':
+      return step.events.length > 0 ? null : NOTHING
     case 'set-round':
       return setRound(step, command, position)
     case 'note-reps':
@@ -226,6 +250,27 @@ export function carryOut(
       }
       return null
     }
+    case 'follow-lead': {
+      const here = roundsNow(step, position)
+      if (typeof here === 'string') return 'The lead counts rounds, and here are none to count.'
+      if (position.workedOff) return 'All rounds of this block are done. Rest, or go on.'
+      if (position.lead) return NOTHING
+      const { format } = here.block
+      const logs = command.logs && (format.type !== 'rounds' || format.counted !== false)
+      emit(step, { type: 'lead-followed', classMs, block: here.block.id })
+      const own = ownPlace(step.run, position.blockIndex, classMs, command.station)
+      const block = step.run.blocks[position.blockIndex]
+      if (block) {
+        const led = { ...block, lead: { ...own, logs } }
+        step.run = { ...step.run, blocks: step.run.blocks.with(position.blockIndex, led) }
+      }
+      return null
+    }
+    case 'leave-lead': {
+      if (!position.lead || blockId === undefined) return NOTHING
+      emit(step, { type: 'lead-left', classMs, block: blockId })
+      return null
+    }
     case 'log-round':
       return logRound(step, command, position, now)
     case 'undo-round':
@@ -358,26 +403,24 @@ function logRound(
   emit(step, { type: 'round-done', classMs, block: block.id, round, by: command.by })
   step.effects.push({ type: 'sound', sound: 'logged' })
   step.run = { ...step.run, lastLogged: { block: block.id, round, atMs: now } }
-  if (here.isForTime && round === lastRound(step, position, plan)) {
-    finish(step, position, block.id)
+  if (here.isForTime && round === lastRound(step, position.blockIndex)) {
+    finish(step, classMs, position.bodyElapsedMs, block.id)
   }
   return null
 }
 
 /** The last round where, with the log as it is now, all are done; else null. */
-function lastRound(step: Step, position: Position, plan: BlockPlan): number | null {
-  const logged = step.run.blocks[position.blockIndex]?.logged ?? []
-  return lowestUndone(logged) > plan.roundLimit ? (logged.at(-1)?.round ?? null) : null
+function lastRound({ run }: Step, blockIndex: number): number | null {
+  const block = run.version.spec.blocks[blockIndex]
+  const logged = run.blocks[blockIndex]?.logged ?? []
+  const limit = (block && roundLimit(block)) ?? Infinity
+  return lowestUndone(logged) > limit ? (logged.at(-1)?.round ?? null) : null
 }
 
-function finish(step: Step, position: Position, block: string): void {
-  settleRest(step, position.classMs)
-  emit(step, {
-    type: 'block-finished',
-    classMs: position.classMs,
-    block,
-    ms: position.bodyElapsedMs,
-  })
+/** `ms`: into the body. */
+function finish(step: Step, classMs: number, ms: number, block: string): void {
+  settleRest(step, classMs)
+  emit(step, { type: 'block-finished', classMs, block, ms })
 }
 
 function undoRound(step: Step, position: Position): string | null {
@@ -404,7 +447,7 @@ function finishBlock(step: Step, position: Position): string | null {
     if (done.has(round)) continue
     emit(step, { type: 'round-done', classMs, block: block.id, round, by: 'afterwards' })
   }
-  finish(step, position, block.id)
+  finish(step, classMs, position.bodyElapsedMs, block.id)
   return null
 }
 

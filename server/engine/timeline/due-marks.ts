@@ -1,7 +1,9 @@
 /** Marks of a run as they fall due on the clock of `now`. */
 import { expectedStationStartMs } from '../pace/walk'
 import { isLive } from './edits'
-import { briefLengthMs, lowestUndone, planOf } from './place'
+import { leadStartMs } from './lead-run'
+import { lowestUndone, planOf } from './own-rounds'
+import { briefLengthMs } from './place'
 import type { DueMark, Place, Run } from './run-types'
 import type { PendingCue, Segment } from './types'
 
@@ -91,12 +93,25 @@ function comesUnannounced(segments: readonly Segment[], index: number): boolean 
 }
 
 /**
- * Class time at which a pending cue falls due, or null while its round has not begun. A station inside
- * a round is where the expected pace, from the member's own start of the round, puts it; a round
- * logged before that passes the cue by.
+ * Class time at which a pending cue falls due: as the lead, if followed, begins its place, else as the
+ * member does; null where neither gets there.
  */
 function pendingMs(run: Run, cue: PendingCue): number | null {
   const blockIndex = run.version.spec.blocks.findIndex((block) => block.id === cue.block)
+  const lead = run.blocks[blockIndex]?.lead
+  const ownMs = ownPendingMs(run, cue, blockIndex)
+  if (!lead) return ownMs
+  const byLeadMs = leadStartMs(run, blockIndex, cue.round, cue.station ?? 0)
+  if (byLeadMs !== null) return byLeadMs
+  const joinedMs = (run.timeline.blocks[blockIndex]?.bodyStartMs ?? 0) + lead.atSeconds * 1_000
+  return ownMs !== null && ownMs < joinedMs ? ownMs : null
+}
+
+/**
+ * Null while the cue's round has not begun. A station inside a round is where the expected pace, from
+ * the member's own start of the round, puts it; a round logged before that passes the cue by.
+ */
+function ownPendingMs(run: Run, cue: PendingCue, blockIndex: number): number | null {
   const span = run.timeline.blocks[blockIndex]
   if (!span) return null
   const startMs = roundStartMs(run, blockIndex, cue.round)

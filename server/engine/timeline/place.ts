@@ -1,7 +1,9 @@
 /** Where a member is in a class: the place at an instant, and what it means. */
-import { blockPlan, roundLimit, type BlockPlan } from '../pace/block-plan'
+import { roundLimit } from '../pace/block-plan'
 import type { Block } from '../spec/schema'
 import { briefMs } from './compile'
+import { leadNow, leadOwes } from './lead-run'
+import { lowestUndone } from './own-rounds'
 import type { Place, Position, Run } from './run-types'
 import type { Segment } from './types'
 
@@ -57,20 +59,6 @@ export function placeAt(run: Run, now: number): Place | null {
     : advance(run, run.clock.place, wholeMs(now) - run.clock.atMs)
 }
 
-export function planOf(run: Run, blockIndex: number): BlockPlan | null {
-  const block = run.version.spec.blocks[blockIndex]
-  return block ? blockPlan(run.version, block, run.blocks[blockIndex]?.options) : null
-}
-
-export function lowestUndone(logged: readonly { round: number }[]): number {
-  let round = 1
-  for (const one of logged) {
-    if (one.round === round) round += 1
-    else if (one.round > round) break
-  }
-  return round
-}
-
 function restLimits(run: Run, index: number): { leastMs: number; mostMs: number } {
   const planned = run.base.segments[index]
   const plannedMs = planned ? planned.endMs - planned.startMs : 0
@@ -121,11 +109,13 @@ export function describe(run: Run, place: Place | null): Position {
     workedOff,
     restingMs: isOwnSegment && run.resting ? classMs - run.resting.sinceClassMs : null,
     rest: null,
-    place: place && run.resting ? { ...place, restingSinceMs: run.resting.sinceClassMs } : place,
+    lead: null,
+    place: place && keptPlace(run, place, blockIndex),
     owed: null,
   }
   if (!place) return base
   if (run.resting && place.segment > run.resting.segment) base.owed = { type: 'end-rest-as-needed' }
+  else if (owesRounds(run, blockIndex, classMs)) base.owed = { type: 'log-lead-rounds' }
   else if (segment === null && !run.ended) base.owed = { type: 'end-class' }
   if (!segment || isOver) return base
   if (inBrief) {
@@ -135,6 +125,11 @@ export function describe(run: Run, place: Place | null): Position {
       : Math.max(0, briefLengthMs(run, segment) - place.briefElapsedMs)
     base.leftMs = base.briefLeftMs ?? 0
     return base
+  }
+  if (segment.kind === 'work') {
+    const now = leadNow(run, blockIndex, classMs)
+    const logs = run.blocks[blockIndex]?.lead?.logs ?? false
+    base.lead = now && { ...now, logs, isWaiting: base.restingMs !== null }
   }
   base.elapsedMs = classMs - segment.startMs
   base.leftMs = Math.max(0, segment.endMs - classMs)
@@ -146,4 +141,22 @@ export function describe(run: Run, place: Place | null): Position {
     }
   }
   return base
+}
+
+/** The place with what only the run knows of it, so that a reload goes on from the same. */
+function keptPlace(run: Run, place: Place, blockIndex: number): Place {
+  const lead = run.blocks[blockIndex]?.lead
+  return {
+    ...place,
+    ...(run.resting ? { restingSinceMs: run.resting.sinceClassMs } : {}),
+    ...(lead ? { lead } : {}),
+  }
+}
+
+function owesRounds(run: Run, blockIndex: number, classMs: number): boolean {
+  if (run.ended) return false
+  for (let index = 0; index <= blockIndex; index += 1) {
+    if (leadOwes(run, index, classMs).length > 0) return true
+  }
+  return false
 }

@@ -6,6 +6,8 @@
 import type { Reason } from '../spec/movement'
 import type { PublishedVersion } from '../spec/version'
 import type { ClassEvent, CountedBy, Counting, HurtPlace, StopSign } from '../tally/events'
+import type { LeadNow } from '../pace/lead'
+import type { PaceStart } from '../pace/walk'
 import type { Mark, Segment, Timeline } from './types'
 
 type DistributiveOmit<T, K extends PropertyKey> = T extends unknown ? Omit<T, K> : never
@@ -42,6 +44,11 @@ export type Command =
   /** `for-time` or a `done` ladder worked off: the member goes on. */
   | { type: 'finish-block' }
   | { type: 'log-round'; by: CountedBy }
+  /** Rounds that a followed lead has completed: owed by the run itself. */
+  | { type: 'log-lead-rounds' }
+  /** The lead counts from now, from the member's own round and this station of it (from 0). */
+  | { type: 'follow-lead'; station?: number; logs: boolean }
+  | { type: 'leave-lead' }
   | { type: 'undo-round' }
   /** Corrections in a rest or after class. */
   | { type: 'set-round'; block: string; round: number; done: boolean; by: CountedBy }
@@ -81,6 +88,14 @@ export interface Place {
   briefElapsedMs: number
   /** Only in `Position.place`: class time at which a rest as needed began that is still going on. */
   restingSinceMs?: number
+  /** Only in `Position.place`: from where the lead of this block goes. */
+  lead?: LeadAnchor
+}
+
+/** From where a followed lead counts. */
+export type LeadAnchor = PaceStart & {
+  /** It logs the rounds that it completes. */
+  logs: boolean
 }
 
 /** How a segment differs from the compiled one. */
@@ -113,6 +128,10 @@ export interface RunBlock {
   logged: { round: number; classMs: number }[]
   /** Option in force, by station. */
   options: string[]
+  /** Null where the lead is not followed in this block. */
+  lead: LeadAnchor | null
+  /** Rests as needed that are over: the lead waited. Class time, in order. */
+  rests: { fromClassMs: number; toClassMs: number }[]
 }
 
 /** Opaque to the rim, plain data (survives structured clone into IndexedDB). */
@@ -129,6 +148,10 @@ export interface Run {
   /** The last dated fact: at `atMs` the member was at `place`. Null before class. The class runs from there unless halted. */
   clock: { atMs: number; place: Place } | null
   halted: 'paused' | 'stopped' | null
+  /** Class time at which the class was last halted. */
+  haltedClassMs: number
+  /** How the member counts, from the start of the class; a lead that is joined again logs where this is `lead`. */
+  counting: Counting | null
   /** A red-flag sign was given: going on is not offered in this class. */
   redFlag: boolean
   /** `end-class` was given. */
@@ -165,12 +188,14 @@ export interface Position {
   workedOff: boolean
   /** Rest as needed in progress: how long, else null. */
   restingMs: number | null
+  /** What the lead does, where it is followed and the block's work goes on; it waits during a rest as needed. */
+  lead: (LeadNow & { logs: boolean; isWaiting: boolean }) | null
   /** In a rest: when it may be cut ('go'), and how far it may still be lengthened. */
   rest: { mayCutInMs: number; mayLengthenMs: number } | null
   /** To be kept by the rim as the sign of life, with the computer's time, about every second and with every event. */
   place: Place | null
   /** A command that is due by itself (a rest as needed that its segment ended, the natural end): the rim sends it at once. */
-  owed: { type: 'end-rest-as-needed' } | { type: 'end-class' } | null
+  owed: Extract<Command, { type: 'end-rest-as-needed' | 'log-lead-rounds' | 'end-class' }> | null
 }
 
 /** The last that is known of a run before a reload. */

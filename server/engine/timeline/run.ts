@@ -6,7 +6,7 @@ import { AS_PLANNED } from '../spec/names'
 import type { PublishedVersion } from '../spec/version'
 import type { ClassEvent } from '../tally/events'
 import { inOrder } from '../tally/order'
-import { carryOut, NOTHING, type Step } from './commands'
+import { carryOut, logLeadRounds, NOTHING, type Step } from './commands'
 import { compile } from './compile'
 import { dueMarks } from './due-marks'
 import { withEdit } from './edits'
@@ -18,6 +18,7 @@ import {
   type Command,
   type DueMark,
   type EventDraft,
+  type LeadAnchor,
   type Place,
   type Position,
   type Run,
@@ -35,6 +36,8 @@ export function newRun(version: PublishedVersion, versionId: string, settings: R
   const blocks: RunBlock[] = version.spec.blocks.map((block) => ({
     logged: [],
     options: stationsOf(block).map(() => AS_PLANNED),
+    lead: null,
+    rests: [],
   }))
   return {
     version,
@@ -45,6 +48,8 @@ export function newRun(version: PublishedVersion, versionId: string, settings: R
     edits: [],
     clock: null,
     halted: null,
+    haltedClassMs: 0,
+    counting: null,
     redFlag: false,
     ended: false,
     resting: null,
@@ -90,7 +95,10 @@ export function apply(run: Run, command: Command, now: number): Applied {
   const place = placeAt(run, now)
   const anchored: Run = place ? { ...run, clock: { atMs: anchorMs(run, now), place } } : run
   const step: Step = { run: anchored, events: [], effects: [] }
-  const refused = carryOut(step, command, describe(run, place), wholeMs(now))
+  // What the lead has counted up to now comes first, so that events tell things in their order.
+  const isOwed = logLeadRounds(step, describe(run, place), wholeMs(now))
+  const position = isOwed ? describe(step.run, placeAt(step.run, now)) : describe(run, place)
+  const refused = carryOut(step, command, position, wholeMs(now))
   return refused === null
     ? { ...step, refused: null }
     : { run, events: [], effects: [], refused: refused === NOTHING ? null : refused }
@@ -152,8 +160,9 @@ export function runFromEvents(
   if (!isLaidOut) run = laidOut(run)
   if (!run.clock) return { run, events: [], gap: null }
   if (alive?.place && isAhead(alive.place, run.clock.place)) {
-    const { restingSinceMs, ...place } = alive.place
+    const { restingSinceMs, lead, ...place } = alive.place
     run = at(run, place)
+    if (lead) run = withLeadAt(run, place.segment, lead)
     if (restingSinceMs !== undefined && !run.ended && run.halted !== 'stopped') {
       run = { ...run, resting: { segment: place.segment, sinceClassMs: restingSinceMs } }
     }
@@ -177,6 +186,14 @@ function pausedAt(run: Run, lastAliveMs: number, agoMs: number | null): Reloaded
   if (!runs || position.halted) return { run, events: [], gap: null }
   const paused = apply(run, { type: 'pause' }, lastAliveMs)
   return { run: paused.run, events: paused.events, gap: { agoMs } }
+}
+
+/** The lead as it was kept: events do not tell the station from which it was joined. */
+function withLeadAt(run: Run, segment: number, lead: LeadAnchor): Run {
+  const id = run.timeline.segments[segment]?.block
+  const index = run.version.spec.blocks.findIndex((block) => block.id === id)
+  const block = run.blocks[index]
+  return block?.lead ? { ...run, blocks: run.blocks.with(index, { ...block, lead }) } : run
 }
 
 function laidOut(run: Run): Run {
