@@ -1,8 +1,9 @@
 /**
- * The command line of a class: check, compile, forecast, score. No database, no network. `class.ts` runs
+ * The command line of a class: check, compile, forecast, score, captions. No database, no network. `class.ts` runs
  * it; apart, so that tests can call it.
  */
 import { readFileSync } from 'node:fs'
+import { captionsOf } from '@/server/engine/captions/write'
 import { forecast } from '@/server/engine/pace/forecast'
 import { parseSpecOrVersion } from '@/server/engine/spec/problems'
 import type { PublishedVersion } from '@/server/engine/spec/version'
@@ -11,7 +12,7 @@ import { scoreBlocks } from '@/server/engine/tally/score'
 import { compile } from '@/server/engine/timeline/compile'
 
 const USAGE =
-  'Use: check FILE | compile FILE | forecast FILE [--tiring F] [--tempo SECONDS] [--change SECONDS] | score FILE EVENTS. A FILE of - is standard input.'
+  'Use: check FILE | compile FILE | forecast FILE [--tiring F] [--tempo SECONDS] [--change SECONDS] | score FILE EVENTS | captions FILE. A FILE of - is standard input.'
 
 /** A wrong call: one line, exit 2. */
 class WrongCall extends Error {}
@@ -106,12 +107,12 @@ const WITHOUT_OPTIONS = (options: Call['options'], command: string): void => {
   if (first) throw new WrongCall(`${command} takes no option --${first}.`)
 }
 
-/** What a command prints for a sound class. */
+/** What a command prints for a sound class: a value as JSON, or a file's own text. */
 type Work = (version: PublishedVersion) => unknown
 
 function workFor({ command, files, options }: Call): Work {
   const wants = command === 'score' ? 2 : 1
-  if (!['check', 'compile', 'forecast', 'score'].includes(command)) {
+  if (!['check', 'compile', 'forecast', 'score', 'captions'].includes(command)) {
     throw new WrongCall(command === '' ? USAGE : `There is no command ${command}. ${USAGE}`)
   }
   if (files.length !== wants) {
@@ -122,6 +123,7 @@ function workFor({ command, files, options }: Call): Work {
   if (command !== 'forecast') WITHOUT_OPTIONS(options, command)
   if (command === 'check') return () => []
   if (command === 'compile') return (version) => compile(version)
+  if (command === 'captions') return captionsOf
   if (command === 'forecast') {
     return (version) =>
       forecast(version, {
@@ -147,7 +149,7 @@ export interface CommandResult {
 export function classCommand(args: readonly string[]): CommandResult {
   const printed = (value: unknown, code: 0 | 1): CommandResult => ({
     code,
-    stdout: `${JSON.stringify(value, null, 2)}\n`,
+    stdout: typeof value === 'string' ? value : `${JSON.stringify(value, null, 2)}\n`,
     stderr: '',
   })
   try {

@@ -87,9 +87,9 @@ describe('the class command', () => {
       'title',
     ])
   })
-  it('compile and forecast print what check prints for a class with problems', () => {
+  it('compile, forecast and captions print what check prints for a class with problems', () => {
     const problems = run(['check', file('bad.json')]).stdout
-    for (const command of ['compile', 'forecast']) {
+    for (const command of ['compile', 'forecast', 'captions']) {
       expect(run([command, file('bad.json')])).toMatchObject({ status: 1, stdout: problems })
     }
   })
@@ -108,6 +108,13 @@ describe('the class command', () => {
       { block: 'a', rounds: 2, reps: 7, totalReps: 27, finishSeconds: null },
     ])
   })
+  it('captions prints WebVTT as it is, of a bare spec as well', () => {
+    const { status, stdout, stderr } = run(['captions', file('bare.json')])
+    expect({ status, stderr }).toEqual({ status: 0, stderr: '' })
+    expect(stdout.startsWith('WEBVTT\n\n')).toBe(true)
+    expect(stdout).toContain('\n\nsegment/1\n00:00:00.000 --> 00:00:01.000\nSquat\n\n')
+    expect(stdout).toContain('\n\ncall/1\n00:00:30.000 --> 00:00:31.000\n30 seconds\n\n')
+  })
   it.each<[string, () => string[]]>([
     ['no command', () => []],
     ['an unknown command', () => ['cheer', file('good.json')]],
@@ -118,6 +125,8 @@ describe('the class command', () => {
     ['no JSON', () => ['check', file('broken.json')]],
     ['an unknown option', () => ['forecast', file('good.json'), '--tires', '1']],
     ['an option of another command', () => ['compile', file('good.json'), '--tempo', '2']],
+    ['captions of two files', () => ['captions', file('good.json'), file('bare.json')]],
+    ['captions with an option', () => ['captions', file('good.json'), '--change', '2']],
     ['an option without its value', () => ['forecast', file('good.json'), '--tiring']],
     ['an option that is no number', () => ['forecast', file('good.json'), '--tempo', 'quick']],
     ['a tempo of 0', () => ['forecast', file('good.json'), '--tempo', '0']],

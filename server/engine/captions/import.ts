@@ -136,7 +136,7 @@ export function cuesFromCaptions(
   const room = Math.max(0, MOST_CUES - (block.cues ?? []).length)
   const left = { automatic: 0, ofOtherBlocks: 0, rounded: 0 }
   /** The first line of each. */
-  const unread: { [what in keyof typeof UNREAD]?: number | undefined } = {
+  const unread: Partial<Record<keyof typeof UNREAD, number | undefined>> = {
     style: styleLine,
     region: regionLine,
   }
