@@ -138,7 +138,9 @@ export function leadAt(
     rep,
     of,
     side,
-    elapsedMs: Math.max(0, Math.min(bodyMs, step.endMs) - step.startMs - waited(bodyMs)),
-    lengthMs: step.endMs - step.startMs - waited(step.endMs),
+    elapsedMs: Math.round(
+      Math.max(0, Math.min(bodyMs, step.endMs) - step.startMs - waited(bodyMs)),
+    ),
+    lengthMs: Math.round(step.endMs - step.startMs - waited(step.endMs)),
   }
 }
