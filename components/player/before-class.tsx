@@ -309,6 +309,11 @@ function CountingChoice() {
       what: 'One press a round: space bar, a clicker, or a tap.',
     },
     {
+      counting: 'lead',
+      words: 'The lead counts',
+      what: 'The figure counts your reps on the screen and logs each round. You can leave it at any time.',
+    },
+    {
       counting: 'afterwards',
       words: 'I say at the end',
       what: 'You count for yourself and say your rounds after class.',
@@ -329,6 +334,13 @@ function CountingChoice() {
         ))}
       </div>
       <p className="text-text-quiet">{now?.what}</p>
+      {preferences.counting === 'lead' ? null : (
+        <Tick
+          on={preferences.leadLogs}
+          onChange={(leadLogs) => set({ leadLogs })}
+          words="A lead that I join in class (L) logs its rounds"
+        />
+      )}
       <Tick
         on={preferences.waitAtBriefs}
         onChange={(waitAtBriefs) => set({ waitAtBriefs })}

@@ -95,7 +95,7 @@ export function WorkCount({
   }
   if (format.type === 'rest') return <div className={styles.count} />
   if (format.type === 'rounds' || format.type === 'for-time') {
-    if (!isCounted(block)) {
+    if (!isCounted(block) && !position.lead) {
       return (
         <div className={styles.count}>
           <p className="condensed text-[length:var(--near)] leading-tight text-text-quiet">
@@ -105,7 +105,7 @@ export function WorkCount({
       )
     }
     const total = format.type === 'for-time' ? format.rounds : null
-    if (afterwards) {
+    if (afterwards && !position.lead) {
       return (
         <div className={styles.count}>
           <p className="w-[8em] flex-none condensed text-[length:var(--near)] leading-tight text-text-quiet">
@@ -119,11 +119,16 @@ export function WorkCount({
     }
     return (
       <Count
-        label="Round"
-        number={String(position.round ?? (tally?.rounds ?? 0) + 1)}
+        label={position.lead ? 'Lead, round' : 'Round'}
+        number={String(position.lead?.round ?? position.round ?? (tally?.rounds ?? 0) + 1)}
         of={total ? `of ${total}` : null}
       >
-        <BlockRungs block={block} views={views} tally={tally} present={position.round} />
+        <BlockRungs
+          block={block}
+          views={views}
+          tally={tally}
+          present={position.lead?.round ?? position.round}
+        />
       </Count>
     )
   }

@@ -149,12 +149,25 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
     else if (resting) send({ type: 'end-rest-as-needed' })
     else send({ type: 'rest-as-needed' })
   }
+  const toggleLead = () =>
+    send(
+      position.lead
+        ? { type: 'leave-lead' }
+        : { type: 'follow-lead', station: inFocus.station, logs: preferences.leadLogs },
+    )
   const ui: PlayerUi = {
     open: (name, station) => setPanel({ name, station: station ?? null }),
-    bringForward: (station) => inFocus.bringForward(station, position),
+    bringForward: (station) => {
+      // Who says where they are has left the lead's place: it counts on from theirs.
+      if (position.lead) {
+        send({ type: 'leave-lead' })
+        send({ type: 'follow-lead', station, logs: position.lead.logs })
+      } else inFocus.bringForward(station, position)
+    },
     primary: () => primary?.act(),
     chooseOption,
     toggleRest,
+    toggleLead,
     stop: () => {
       setPanel(null)
       send({ type: 'stop' })
@@ -181,6 +194,8 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
         return ui.stop()
       case 'options':
         return ui.open('options')
+      case 'lead':
+        return toggleLead()
       case 'keys':
         return ui.open('keys')
       case 'full-screen':
@@ -284,7 +299,7 @@ function RunningClass({ position, run }: { position: Position; run: Run }) {
             nextWork={nextWork}
             phone={phone}
             paused={paused}
-            roundUnknown={afterwards || (kind === 'work' && !counted)}
+            roundUnknown={position.lead === null && (afterwards || (kind === 'work' && !counted))}
             options={
               view ? (
                 <div className={styles.options}>
@@ -549,6 +564,7 @@ function RightSide({
               view={view}
               round={nextWork.round ?? 1}
               side={nextWork.side}
+              lead={null}
               moving={!paused}
               roundUnknown={false}
             />
@@ -587,6 +603,7 @@ function RightSide({
             view={view}
             round={roundOf(position)}
             side={side}
+            lead={kind === 'work' ? position.lead : null}
             moving={!paused && kind === 'work'}
             roundUnknown={roundUnknown}
           />
@@ -598,7 +615,8 @@ function RightSide({
   )
 }
 
-const roundOf = (position: Position) => position.round ?? position.segment?.round ?? 1
+const roundOf = (position: Position) =>
+  position.lead?.round ?? position.round ?? position.segment?.round ?? 1
 
 /** The kit that these stations need, with the class's own counts. */
 function kitLine(

@@ -12,6 +12,7 @@ const KEYS: readonly [string, string][] = [
   ['2', 'As planned'],
   ['3', 'Harder option'],
   ['O', 'All options, by what bothers you'],
+  ['L', 'Follow the lead, and leave it'],
   ['R', 'Rest as needed, and go on; cuts a rest once it may'],
   ['H', 'This hurts'],
   ['S', 'Stop at once'],

@@ -1,5 +1,6 @@
 'use client'
 import { ActionButton } from './button'
+import { LeadButton } from './lead-button'
 import { Panel } from './panel'
 import { usePlayerUi } from './player-ui'
 
@@ -27,6 +28,7 @@ export function MorePanel({
             Undo round
           </ActionButton>
         ) : null}
+        <LeadButton className={wide} onDone={onClose} />
         <ActionButton className={wide} onClick={() => ui.open('options')}>
           All options
         </ActionButton>

@@ -1,6 +1,7 @@
 'use client'
 import clsx from 'clsx'
 import type { ReactNode } from 'react'
+import type { Position } from '@/server/engine/timeline/run-types'
 import styles from './floor-plan.module.css'
 import { figureOf, repsNow, type StationView } from './scene'
 import { StationFigure } from './station-figure'
@@ -34,12 +35,15 @@ export function RepsFigure({
   view,
   round,
   side,
+  lead,
   moving,
   roundUnknown,
 }: {
   view: StationView
   round: number
   side: 'left' | 'right' | null
+  /** Where the lead is followed: it counts the reps. */
+  lead: Position['lead']
   moving: boolean
   /** The member says rounds at the end: a ladder is shown as its scheme. */
   roundUnknown: boolean
@@ -49,8 +53,10 @@ export function RepsFigure({
   const unit = sidesText(view.sides)
   return (
     <>
-      <div className={styles.reps}>
-        {scheme && view.reps !== null ? (
+      <div className={styles.reps} data-led={lead ? '' : undefined}>
+        {lead ? (
+          <LeadCount lead={lead} />
+        ) : scheme && view.reps !== null ? (
           <>
             <div className={clsx('condensed', styles.repsUnit)}>reps</div>
             <div className={clsx('figures', styles.repsScheme)}>{schemeText(view.reps)}</div>
@@ -83,7 +89,39 @@ export function RepsFigure({
         ) : null}
       </div>
       <div className={styles.figure}>
-        <StationFigure view={view} figure={figureOf(view)} moving={moving} side={side} />
+        <StationFigure
+          view={view}
+          figure={figureOf(view)}
+          moving={moving}
+          side={lead && view.sides === 'each' ? lead.side : side}
+          led={lead !== null}
+        />
+      </div>
+    </>
+  )
+}
+
+/** 'rep 7 of 12, left': the number alone is large, what it counts stands above it. */
+function LeadCount({ lead }: { lead: NonNullable<Position['lead']> }) {
+  const isRep = lead.state === 'rep'
+  const words = lead.isWaiting
+    ? 'the lead waits'
+    : lead.state === 'change'
+      ? 'change'
+      : lead.state === 'done'
+        ? 'all done'
+        : `of ${lead.of}${lead.side ? `, ${lead.side}` : ''}`
+  return (
+    <>
+      <div className={clsx('condensed', styles.repsUnit)} data-matters="" data-testid="lead">
+        {words}
+      </div>
+      <div
+        className={clsx('figures', styles.repsNumber)}
+        style={{ ['--unit' as string]: 'max(var(--distance), 5dvh)' }}
+        data-testid="lead-rep"
+      >
+        {isRep ? lead.rep : lead.state === 'change' ? '–' : ''}
       </div>
     </>
   )

@@ -12,6 +12,7 @@ export interface PlayerUi {
   primary(): void
   chooseOption(block: string, station: number, option: string): void
   toggleRest(): void
+  toggleLead(): void
   stop(): void
   togglePause(): void
   toggleFullScreen(): void

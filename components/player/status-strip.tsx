@@ -1,6 +1,7 @@
 'use client'
 import clsx from 'clsx'
 import { ActionButton } from './button'
+import { LeadButton } from './lead-button'
 import styles from './floor-plan.module.css'
 import { usePlayer } from './player-context'
 import { usePlayerUi } from './player-ui'
@@ -127,6 +128,7 @@ export function StatusStrip({
                 Undo round
               </ActionButton>
             ) : null}
+            <LeadButton look="plain" className={plain} hint="L" />
             <ActionButton
               look="plain"
               className={plain}

@@ -33,7 +33,23 @@ function samePlace(one: Position | null, other: Position | null): boolean {
     (one.rest === null) === (other.rest === null) &&
     (one.rest === null || one.rest.mayCutInMs <= 0) ===
       (other.rest === null || other.rest.mayCutInMs <= 0) &&
-    one.rest?.mayLengthenMs === other.rest?.mayLengthenMs
+    one.rest?.mayLengthenMs === other.rest?.mayLengthenMs &&
+    sameLead(one.lead, other.lead)
+  )
+}
+
+/** A new rep is something to be seen; how far it is, the figure shows by itself. */
+function sameLead(one: Position['lead'], other: Position['lead']): boolean {
+  if (!one || !other) return one === other
+  return (
+    one.round === other.round &&
+    one.station === other.station &&
+    one.state === other.state &&
+    one.rep === other.rep &&
+    one.of === other.of &&
+    one.side === other.side &&
+    one.logs === other.logs &&
+    one.isWaiting === other.isWaiting
   )
 }
 

@@ -49,6 +49,13 @@ function ahead(position: Position, ms: number): Position {
     leftMs: position.leftMs - step,
     bodyElapsedMs: position.bodyElapsedMs + step,
     bodyLeftMs: Math.max(0, position.bodyLeftMs - step),
+    lead:
+      position.lead === null || position.lead.isWaiting
+        ? position.lead
+        : {
+            ...position.lead,
+            elapsedMs: Math.min(position.lead.lengthMs, position.lead.elapsedMs + step),
+          },
     restingMs: position.restingMs === null ? null : position.restingMs + step,
     rest: position.rest
       ? { ...position.rest, mayCutInMs: Math.max(0, position.rest.mayCutInMs - step) }

@@ -9,6 +9,7 @@ export type PlayerKey =
   | 'option-2'
   | 'option-3'
   | 'options'
+  | 'lead'
   | 'rest'
   | 'hurt'
   | 'stop'
@@ -18,6 +19,7 @@ export type PlayerKey =
 const LETTERS: Record<string, PlayerKey> = {
   p: 'pause',
   o: 'options',
+  l: 'lead',
   r: 'rest',
   h: 'hurt',
   s: 'stop',

@@ -1,7 +1,7 @@
 'use client'
 import { useState } from 'react'
 import { blockPlan } from '@/server/engine/pace/block-plan'
-import { expectedStationStartMs } from '@/server/engine/pace/walk'
+import { expectedStation, expectedStationStartMs } from '@/server/engine/pace/walk'
 import type { Position, Run } from '@/server/engine/timeline/run-types'
 import { usePlayer } from './player-context'
 
@@ -14,12 +14,14 @@ interface Said {
 }
 
 /**
- * Index of the station that heads the screen. Timed pieces know theirs; in rounds it is the one that
- * the planned pace reaches since the round began, or since the member brought one forward.
+ * Index of the station that heads the screen. Timed pieces know theirs; in rounds it is the lead's where
+ * that is followed, else the one that the planned pace reaches since the round began, or since the
+ * member brought one forward.
  */
 function stationInFocus(run: Run, position: Position, said: Said | null): number {
   const own = position.segment?.station
   if (own !== undefined) return own
+  if (position.lead) return position.lead.station
   const block = run.version.spec.blocks[position.blockIndex]
   const state = run.blocks[position.blockIndex]
   const span = run.timeline.blocks[position.blockIndex]
@@ -33,15 +35,9 @@ function stationInFocus(run: Run, position: Position, said: Said | null): number
   const roundStartMs = Math.max(0, ...logged.map((each) => each.classMs - span.bodyStartMs))
   const isSaid = said?.segment === position.segmentIndex && said.round === round
   const from = isSaid ? said.station : 0
-  const startOf = (station: number) => expectedStationStartMs(plan, round, station, roundStartMs)
-  const lateMs = isSaid ? said.atMs - (startOf(from) ?? said.atMs) : 0
-  let station = from
-  for (let next = from + 1; next < plan.stations.length; next += 1) {
-    const startMs = startOf(next)
-    if (startMs === null || position.bodyElapsedMs < startMs + lateMs) break
-    station = next
-  }
-  return station
+  const plannedMs = expectedStationStartMs(plan, round, from, roundStartMs)
+  const lateMs = isSaid ? said.atMs - (plannedMs ?? said.atMs) : 0
+  return expectedStation(plan, round, roundStartMs, position.bodyElapsedMs, from, lateMs)
 }
 
 export function useStationInFocus(): {

@@ -31,6 +31,7 @@ import type { PlayerPreferences, PlayerState, PlayerStore, StationKey } from './
 
 export const DEFAULT_PREFERENCES: PlayerPreferences = {
   counting: 'press',
+  leadLogs: true,
   waitAtBriefs: false,
   changeExtraSeconds: 0,
   screenDiagonalInches: 14,

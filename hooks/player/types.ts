@@ -7,6 +7,8 @@ import type { PlayerData } from '@/server/contract/classes'
 /** Chosen before class and kept in the browser for the next one. */
 export interface PlayerPreferences {
   counting: Counting
+  /** A lead that is joined in class logs the rounds that it completes. */
+  leadLogs: boolean
   waitAtBriefs: boolean
   changeExtraSeconds: number
   screenDiagonalInches: number

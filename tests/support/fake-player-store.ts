@@ -13,6 +13,7 @@ import { playerFixture } from './player-fixture'
 
 export const FAKE_PREFERENCES: PlayerPreferences = {
   counting: 'press',
+  leadLogs: true,
   waitAtBriefs: false,
   changeExtraSeconds: 0,
   screenDiagonalInches: 14,
