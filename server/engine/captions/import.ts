@@ -19,6 +19,7 @@ export interface NotCarried {
 export interface ImportedCues {
   /** To be added to the block's own, in order of time. */
   cues: Cue[]
+  /** By line; what is about the whole file last. */
   notCarried: NotCarried[]
 }
 
@@ -212,5 +213,6 @@ export function cuesFromCaptions(
       what: `${counted(left.ofOtherBlocks, 'cue')} of other blocks of this class left out.`,
     })
   }
-  return { cues, notCarried }
+  const lineOf = ({ line }: NotCarried) => line ?? Number.MAX_SAFE_INTEGER
+  return { cues, notCarried: notCarried.sort((a, b) => lineOf(a) - lineOf(b)) }
 }

@@ -23,14 +23,14 @@ export interface ReadCue {
   hasVoice: boolean
 }
 
-export interface ReadProblem {
+interface ReadProblem {
   /** From 1. */
   line: number
   message: string
 }
 
-export interface ReadCaptions {
-  /** In the order of the file. */
+interface ReadCaptions {
+  /** Both in the order of the file. */
   cues: ReadCue[]
   problems: ReadProblem[]
   /** The line of the first style sheet and region, which are passed over; absent where there is none. */
@@ -234,5 +234,5 @@ export function readCaptions(text: string): ReadCaptions {
   const reader = new Reader(text.replace(/\0/g, '\uFFFD').split(/\r\n|\r|\n/))
   reader.read()
   const { cues, problems, passedOver } = reader
-  return { cues, problems, ...passedOver }
+  return { cues, problems: problems.sort((a, b) => a.line - b.line), ...passedOver }
 }
