@@ -255,6 +255,17 @@ call/5
       expect(found.length).toBeGreaterThan(2)
     }
   })
+
+  it('leave out a cue of a station that would begin as the block ends', () => {
+    const at = (seconds: number) => {
+      const stations = [{ ...squats, reps: 1, change: 0 }, presses]
+      const format: Format = { type: 'rounds', seconds, stations }
+      return captionsOf(versionOf([block('a', format, { cues: [cue('c', { station: 1 })] })]))
+    }
+    expect(at(4)).toContain('\ncue/a/c\n00:00:08.000 --> ')
+    expect(at(3)).toContain('\na/c (round 1, station 2): Cue c\n')
+    expect(at(3)).not.toContain('cue/a/c')
+  })
 })
 
 const NASTY = [
