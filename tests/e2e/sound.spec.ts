@@ -1,0 +1,214 @@
+import { expect, test, type Page } from '@playwright/test'
+import { openDatabase } from '@/db/client'
+import type { ClassEvent } from '@/server/engine/tally/events'
+import { compile } from '@/server/engine/timeline/compile'
+import { beepingClass, plantClass } from '../support/sound-class'
+import {
+  addProbe,
+  boundsOf,
+  eventsSentBy,
+  instantOf,
+  judgeSounds,
+  percentile,
+  pictureLagsMs,
+  plannedSounds,
+  readProbe,
+  sizes,
+  type ProbeLog,
+} from '../support/sound-probe'
+import { openTabs } from '../support/tabs'
+
+test.setTimeout(120_000)
+// Recording a trace would take the time that is measured.
+test.use({ trace: 'off', screenshot: 'off' })
+
+/** `npm run bench` holds a run of five minutes to this as well. */
+const SOUND_MS = 10
+/** Two frames, and the 50 ms after which a piece's first number may come: the bench has the bar itself. */
+const PICTURE_MS = 34 + 50
+
+const version = beepingClass({
+  type: 'intervals',
+  rounds: 2,
+  stations: [
+    { movement: 'jumping-jack', work: 8, rest: 4 },
+    { movement: 'march', work: 16, rest: 4 },
+  ],
+})
+
+// Class times, half way between two marks save where the class is paused.
+const HIDDEN_FROM_MS = 33_500
+const HIDDEN_TO_MS = 43_500
+const INTERRUPTED_FROM_MS = 44_500
+const INTERRUPTED_TO_MS = 46_500
+/** A mark of 48 s is on the audio clock by now and must be called off. */
+const PAUSED_AT_MS = 47_900
+const PAUSE_MS = 2_000
+const END_MS = 55_500
+
+async function eventOf(events: ClassEvent[], type: ClassEvent['type']): Promise<ClassEvent> {
+  await expect.poll(() => events.some((event) => event.type === type)).toBe(true)
+  const event = events.find((one) => one.type === type)
+  if (!event) throw new Error(`no event '${type}'`)
+  return event
+}
+
+/** Waits until an instant of the page's clock. */
+async function until(page: Page, atMs: number): Promise<void> {
+  await page.waitForTimeout(atMs - (await page.evaluate(() => performance.now())))
+}
+
+test('every mark sounds once and in time with its number: seen, hidden, interrupted and paused', async ({
+  baseURL,
+}) => {
+  if (!baseURL) throw new Error('Nothing is served.')
+  const { db, sql } = openDatabase(process.env.DATABASE_URL ?? '', 2)
+  const planted = await plantClass(db, version)
+  const { cookie } = await planted.member('Ada Sounding')
+  const tabs = await openTabs(baseURL, cookie)
+  try {
+    await addProbe(tabs.context)
+    const page = tabs.context.pages()[0] ?? (await tabs.context.newPage())
+    const errors: string[] = []
+    page.on('pageerror', (error) => errors.push(error.message))
+    const other = await tabs.context.newPage()
+    await page.bringToFront()
+    const events = eventsSentBy(page)
+    await page.goto(`${baseURL}/play/${planted.scheduledClassIds[0]}`)
+    await page.getByRole('button', { name: 'Start class' }).first().click()
+    const started = await eventOf(events, 'started')
+    const [startMs] = boundsOf(await readProbe(page), started)
+
+    // By the page's own timers, for a pause must fall between a mark's scheduling and its sound.
+    await page.evaluate(
+      ({ interruptedMs, goesOnMs, pauseMs, resumeMs }) => {
+        const at = (ms: number, work: () => void) => setTimeout(work, ms - performance.now())
+        const press = () => {
+          document.body.dispatchEvent(new KeyboardEvent('keydown', { key: 'p', bubbles: true }))
+        }
+        at(interruptedMs, () => void window.soundProbe.context?.suspend())
+        at(goesOnMs, () => void window.soundProbe.context?.resume())
+        at(pauseMs, press)
+        at(resumeMs, press)
+      },
+      {
+        interruptedMs: startMs + INTERRUPTED_FROM_MS,
+        goesOnMs: startMs + INTERRUPTED_TO_MS,
+        pauseMs: startMs + PAUSED_AT_MS,
+        resumeMs: startMs + PAUSED_AT_MS + PAUSE_MS,
+      },
+    )
+    await until(page, startMs + HIDDEN_FROM_MS)
+    await other.bringToFront()
+    await until(page, startMs + HIDDEN_TO_MS - 800)
+    await page.bringToFront()
+    await until(page, startMs + END_MS + PAUSE_MS + 300)
+    const log = await readProbe(page)
+
+    const paused = await eventOf(events, 'paused')
+    const resumed = await eventOf(events, 'resumed')
+    const begunMs = instantOf(log, started, (atMs) =>
+      plannedSounds(version, atMs).filter((one) => one.atMs < atMs + paused.classMs),
+    )
+    const pausedAtMs = begunMs + paused.classMs
+    const planGoingOn = (atMs: number) =>
+      plannedSounds(version, begunMs, { classMs: paused.classMs, ms: atMs - pausedAtMs })
+    const goneOnMs = instantOf(log, resumed, (atMs) =>
+      planGoingOn(atMs).filter((one) => one.atMs > pausedAtMs),
+    )
+    const plan = planGoingOn(goneOnMs)
+    const result = judgeSounds(log, plan, goneOnMs + END_MS - paused.classMs, [
+      [startMs + INTERRUPTED_FROM_MS, startMs + INTERRUPTED_TO_MS],
+      [pausedAtMs, goneOnMs],
+    ])
+
+    await test.step('the class begins with its press', () => {
+      const [earliest, latest] = boundsOf(log, started)
+      expect(latest - earliest).toBeLessThan(150)
+      expect(paused.classMs).toBeGreaterThan(PAUSED_AT_MS - 20)
+      expect(paused.classMs).toBeLessThan(48_000)
+      const calledOff = log.starts.filter(
+        (one) => one.calledOffSeconds !== null && one.calledOffSeconds < one.whenSeconds,
+      )
+      expect(calledOff.length, 'the pause came before its mark was on the clock').toBeGreaterThan(0)
+    })
+    await test.step('none missed, none doubled, none bunched', () => {
+      expect(result.planned.length).toBeGreaterThan(25)
+      expect(result.missed).toEqual([])
+      expect(result.doubled).toEqual([])
+      expect(result.unplanned).toEqual([])
+    })
+    await test.step('each at its time, put on the audio clock ahead of it', () => {
+      expect(percentile(sizes(result.errorsMs), 0.99)).toBeLessThanOrEqual(SOUND_MS)
+      expect(Math.min(...result.aheadMs)).toBeGreaterThan(0)
+    })
+    await test.step('the tab was hidden, and marks fell due meanwhile', () => {
+      const [hidden, seen] = log.visibility.slice(-2)
+      expect([hidden?.state, seen?.state]).toEqual(['hidden', 'visible'])
+      const meanwhile = result.planned.filter(
+        ({ atMs }) => atMs > (hidden?.atMs ?? Infinity) && atMs < (seen?.atMs ?? 0),
+      )
+      expect(meanwhile.length).toBeGreaterThanOrEqual(5)
+    })
+    await test.step('the number on screen changes with its beep', () => {
+      const seen = judgeSounds(log, plan, startMs + HIDDEN_FROM_MS)
+      const lags = pictureLagsMs(log, seen)
+      expect(lags.length).toBeGreaterThanOrEqual(15)
+      expect(percentile(lags, 0.95)).toBeLessThanOrEqual(PICTURE_MS)
+    })
+    expect(errors).toEqual([])
+  } finally {
+    await tabs.close()
+    await sql.end({ timeout: 5 })
+  }
+})
+
+test('the measure itself tells a sound that is missing, doubled, late, not planned or not shown', () => {
+  const plan = plannedSounds(version, 1_000)
+  const lastMs = 1_000 + compile(version).lengthMs
+  const ideal = (): ProbeLog => ({
+    starts: plan.map(({ name, atMs }) => ({
+      name,
+      // The audio clock began at 500 ms of the page's.
+      whenSeconds: (atMs - 500) / 1_000,
+      contextSeconds: (atMs - 650) / 1_000,
+      atMs: atMs - 150,
+      calledOffSeconds: null,
+      epoch: 0,
+    })),
+    stamps: Array.from({ length: lastMs / 200 }, (_, index) => ({
+      atMs: 600 + index * 200,
+      epoch: 0,
+      heardSeconds: index / 5,
+      heardAtMs: 500 + index * 200,
+    })),
+    texts: plan.map(({ atMs, text }) => ({ atMs: atMs + 10, text })),
+    presses: [],
+    visibility: [],
+  })
+  const judged = (change: (log: ProbeLog) => void) => {
+    const log = ideal()
+    change(log)
+    return judgeSounds(log, plan, lastMs)
+  }
+  const good = judged(() => undefined)
+  expect(good.planned).toHaveLength(plan.length)
+  expect([good.missed, good.doubled, good.unplanned]).toEqual([[], [], []])
+  expect(percentile(sizes(good.errorsMs), 1)).toBeLessThan(0.01)
+  expect(percentile(pictureLagsMs(ideal(), good), 1)).toBeCloseTo(10, 3)
+
+  expect(judged((log) => log.starts.splice(7, 1)).missed).toHaveLength(1)
+  const again = judged((log) => log.starts.push(...log.starts.slice(7, 8)))
+  expect(again.doubled).toHaveLength(1)
+  const late = judged((log) => log.starts.forEach((one) => (one.whenSeconds += 0.02)))
+  expect(percentile(sizes(late.errorsMs), 0.99)).toBeCloseTo(20, 3)
+  expect(
+    judged((log) => log.starts.forEach((one) => (one.calledOffSeconds = one.contextSeconds)))
+      .missed,
+  ).toHaveLength(plan.length)
+  const stray = judged((log) => log.starts.slice(0, 1).forEach((one) => (one.name = 'bell')))
+  expect([stray.missed.length, stray.unplanned.length]).toEqual([1, 1])
+  const unseen = ideal()
+  unseen.texts = []
+  expect(pictureLagsMs(unseen, good).every((lag) => lag === Infinity)).toBe(true)
+})
