@@ -1,11 +1,15 @@
 /** Marks as they are read and heard. */
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import { callText, nextText } from '@/server/engine/timeline/speech'
-import type { Mark } from '@/server/engine/timeline/types'
+import type { Mark, Segment } from '@/server/engine/timeline/types'
 import type { SoundName } from './ports'
 
 /** What a call, cue or announcement says; null for a beep and for a cue that is not there. */
-export function markText(version: PublishedVersion, mark: Mark): string | null {
+export function markText(
+  version: PublishedVersion,
+  segments: readonly Segment[],
+  mark: Mark,
+): string | null {
   switch (mark.what) {
     case 'beep':
       return null
@@ -18,7 +22,7 @@ export function markText(version: PublishedVersion, mark: Mark): string | null {
           ?.cues?.find((cue) => cue.id === mark.id)?.text ?? null
       )
     case 'next':
-      return nextText(version, mark)
+      return nextText(version, segments, mark)
   }
 }
 

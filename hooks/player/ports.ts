@@ -18,6 +18,36 @@ export interface SoundPort {
   close(): void
 }
 
+/** A voice of this computer. */
+export interface VoiceChoice {
+  id: string
+  name: string
+  /** BCP 47. */
+  language: string
+}
+
+export interface VoiceSettings {
+  on: boolean
+  /** `VoiceChoice.id`; null, or one that is gone: the first of the list. */
+  voice: string | null
+  /** 1 is the voice's usual speed. */
+  rate: number
+  /** 0 to 1. */
+  volume: number
+}
+
+export interface VoicePort {
+  /** Tells the voices now and whenever they change; none: nothing can be said aloud here. */
+  watch(tell: (voices: VoiceChoice[]) => void): () => void
+  configure(settings: VoiceSettings): void
+  /**
+   * Says `text` at once, at `level` (0 to 1) of the chosen volume, and calls `done` when it has ended or
+   * failed. Returns the way to cut it; null where it is not said: off, or no voice.
+   */
+  say(text: string, level: number, done: () => void): (() => void) | null
+  close(): void
+}
+
 /** One attempt as the browser keeps it. */
 export interface KeptAttempt {
   attemptId: string
@@ -82,6 +112,7 @@ export interface PlayerPorts {
   /** Wakes about every 50 ms, in hidden tabs too. Returns the way to end it. */
   tick(wake: () => void): () => void
   sound: SoundPort
+  voice: VoicePort
   memory: PlayerMemory
   /** What the member's screen is taken for until they say better; without it a laptop at two metres. */
   usualScreen?: UsualScreen

@@ -78,7 +78,7 @@ export function createRunner(
     },
     due(run, nowMs) {
       for (const mark of marksBetween(run, shownToMs, nowMs + 1)) {
-        const text = markText(version, mark)
+        const text = markText(version, run.timeline.segments, mark)
         if (text === null) continue
         const isLess =
           shown !== null &&

@@ -27,6 +27,7 @@ import { markText } from './mark-text'
 import type { Claim, KeptAlive, KeptAttempt, PlayerPorts } from './ports'
 import { createRunClock } from './run-clock'
 import { createRunner } from './runner'
+import { createSpeaker } from './speaker'
 import type { PlayerPreferences, PlayerState, PlayerStore, StationKey } from './types'
 
 export const DEFAULT_PREFERENCES: PlayerPreferences = {
@@ -38,6 +39,10 @@ export const DEFAULT_PREFERENCES: PlayerPreferences = {
   distanceMetres: 2,
   soundVolume: 0.8,
   soundOn: true,
+  voiceOn: true,
+  voice: null,
+  voiceRate: 1,
+  voiceVolume: 0.9,
   lettersOn: true,
   keepHallDark: false,
 }
@@ -53,6 +58,7 @@ const RATE_WITHIN_MS = 30 * 60_000
 const SHOW_AFTER_MS = 2_000
 
 const CLOCK_CHANGED = 'The computer’s clock was changed. The class goes on as it was.'
+const VOICE_SAMPLE = 'Half-way. Shoulders down, and breathe out as you stand up.'
 const NOT_KEPT = 'This browser keeps nothing: leave the page open until everything is saved.'
 
 export interface Player {
@@ -76,6 +82,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
   const { memory } = ports
   const clock = createRunClock(ports)
   const runner = createRunner(data.version, ports.sound, clock)
+  const speaker = createSpeaker(data.version, ports.voice, (caption) => set({ caption }))
   const unwatch: (() => void)[] = []
   let seq = 0
   let claim: Claim | null = null
@@ -108,12 +115,14 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
     notice: null,
     saving: { state: 'saved', unsent: 0, message: null },
     sound: 'blocked',
+    voices: [],
+    caption: null,
     otherTab: false,
 
     setPreferences(change) {
       const preferences = { ...get().preferences, ...change }
       set({ preferences })
-      ports.sound.configure(preferences.soundVolume, preferences.soundOn)
+      configureSound(preferences)
       memory.keepPreferences(data.membershipId, preferences).catch(() => undefined)
     },
     setVolume(volume) {
@@ -136,6 +145,15 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
         )
         countToCallOff = beats.filter((callOff) => callOff !== null)
       })
+    },
+
+    tryVoice() {
+      void ports.sound.unlock()
+      set({ caption: VOICE_SAMPLE })
+      const clear = () => {
+        if (!isClosed && get().caption === VOICE_SAMPLE) set({ caption: null })
+      }
+      if (!ports.voice.say(VOICE_SAMPLE, 1, clear)) clear()
     },
 
     start(todayNote) {
@@ -188,6 +206,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
       for (const effect of applied.effects) ports.sound.schedule(effect.sound, ports.now())
       record(applied.events)
       refresh(now)
+      if (get().stage === 'class') speak(now)
       keepAlive(true)
     },
 
@@ -233,6 +252,26 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
   const { setState: set, getState: get } = store
   let foldedFor: readonly ClassEvent[] | null = null
 
+  function configureSound(preferences: PlayerPreferences): void {
+    ports.sound.configure(preferences.soundVolume, preferences.soundOn)
+    ports.voice.configure({
+      on: preferences.voiceOn,
+      voice: preferences.voice,
+      rate: preferences.voiceRate,
+      volume: preferences.voiceVolume,
+    })
+  }
+
+  function speak(now: number): void {
+    const { run, position } = get()
+    if (run && position) speaker.tick(run, position, now)
+  }
+
+  function silence(): void {
+    runner.silence()
+    speaker.silence()
+  }
+
   function wakeUp(): void {
     void ports.sound.unlock()
     ports.stayAwake(true)
@@ -274,6 +313,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
     const now = clock.now()
     clock.restart()
     runner.begin(now)
+    speaker.begin(now)
     set({ run, position: positionAt(run, now) })
     endTick ??= ports.tick(tick)
   }
@@ -347,7 +387,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
     if (wake.type === 'gap' && stage === 'class') {
       const away = afterGap(run, wake.lastAliveMs, now)
       if (away.gap) {
-        runner.silence()
+        silence()
         set({ run: away.run, stage: 'gap', gap: { awayMs: wake.awayMs, reason: wake.reason } })
         record(away.events)
         refresh(now)
@@ -358,7 +398,10 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
     const { owed } = get().position ?? { owed: null }
     if (owed) get().send(owed)
     const { run: current, stage: after } = get()
-    if (current && after === 'class') runner.sound(current, now)
+    if (current && after === 'class') {
+      runner.sound(current, now)
+      speak(now)
+    }
     keepAlive(false)
   }
 
@@ -368,7 +411,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
     if (!run) return
     const patch: Partial<PlayerState> = { position: positionAt(run, now) }
     patch.cueLine = marksAhead(run, now, CUE_LINE_MS).flatMap((mark) => {
-      const text = markText(data.version, mark)
+      const text = markText(data.version, run.timeline.segments, mark)
       return text === null ? [] : [{ mark, text, dueInMs: mark.dueAtMs - now }]
     })
     patch.due = runner.due(run, now)
@@ -377,6 +420,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
       patch.tally = fold(data.version, events)
     }
     if (run.ended && get().stage === 'class') {
+      speaker.silence()
       patch.stage = 'after'
       if (open && open.attempt.over === null) markOver(open, 'ended')
       ports.stayAwake(false)
@@ -403,7 +447,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
 
   function leaveToOther(): void {
     if (isClosed) return
-    runner.silence()
+    silence()
     ports.stayAwake(false)
     set({ otherTab: true })
   }
@@ -500,8 +544,8 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
       const preferences = await memory.preferences(data.membershipId).catch(() => null)
       if (isClosed) return
       set({ preferences: { ...DEFAULT_PREFERENCES, ...ports.usualScreen, ...preferences } })
-      const { soundVolume, soundOn } = get().preferences
-      ports.sound.configure(soundVolume, soundOn)
+      configureSound(get().preferences)
+      unwatch.push(ports.voice.watch((voices) => set({ voices })))
       unwatch.push(ports.sound.watch((state) => set({ sound: state })))
       unwatch.push(
         ports.watchOutbox((saving) => {
@@ -533,11 +577,12 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
       endTick?.()
       endTick = null
       for (const end of unwatch) end()
-      runner.silence()
+      silence()
       for (const callOff of countToCallOff) callOff()
       claim?.release()
       ports.stayAwake(false)
       ports.sound.close()
+      ports.voice.close()
     },
   }
 }

@@ -3,6 +3,7 @@ import type { PlacedMark, Position, Run, Command } from '@/server/engine/timelin
 import type { AttemptTally } from '@/server/engine/tally/types'
 import type { ClassEvent, Counting } from '@/server/engine/tally/events'
 import type { PlayerData } from '@/server/contract/classes'
+import type { VoiceChoice } from './ports'
 
 /** Chosen before class and kept in the browser for the next one. */
 export interface PlayerPreferences {
@@ -15,6 +16,11 @@ export interface PlayerPreferences {
   distanceMetres: number
   soundVolume: number
   soundOn: boolean
+  voiceOn: boolean
+  /** Which voice; null: the first of this computer's list. */
+  voice: string | null
+  voiceRate: number
+  voiceVolume: number
   lettersOn: boolean
   keepHallDark: boolean
 }
@@ -47,6 +53,10 @@ export interface PlayerState {
     message: string | null
   }
   sound: 'ready' | 'blocked' | 'off' | 'failed'
+  /** Voices of this computer; none: captions and sounds go on without. */
+  voices: VoiceChoice[]
+  /** The caption of what is being said, or would be. */
+  caption: string | null
   otherTab: boolean
 }
 
@@ -61,6 +71,8 @@ export interface PlayerActions {
   goOn(from: 'where-i-was' | 'where-the-clock-would-be'): void
   takeOver(): void
   playCount(): void
+  /** Says a sentence, to be heard before class. */
+  tryVoice(): void
   unlockSound(): void
   setVolume(volume: number): void
 }

@@ -13,6 +13,7 @@ import { keepPagesOnlyFor, keepThisPage } from './service-worker'
 import { createPlayer } from './store'
 import { startTicker } from './ticker'
 import type { PlayerStore } from './types'
+import { browserVoice } from './voice'
 import { browserWakeLock } from './wake-lock'
 
 /** The player's store over this browser, for as long as the component is there; null until it is. */
@@ -26,6 +27,7 @@ export function useBrowserPlayer(data: PlayerData): StoreApi<PlayerStore> | null
       wall: () => Date.now(),
       tick: startTicker,
       sound: browserSound(),
+      voice: browserVoice(),
       memory,
       usualScreen: usualScreen(
         Math.min(window.screen.width, window.screen.height),

@@ -4,6 +4,7 @@ import { compile } from '@/server/engine/timeline/compile'
 import {
   callText,
   nextText,
+  sentencesOf,
   speak,
   speechMs,
   utterancesOf,
@@ -116,12 +117,49 @@ describe('what a class says', () => {
       { atMs: 95_000, what: 'call', text: '10 seconds' },
     ])
   })
+  it('names the rest between two pieces of a block, the movement after it, and the side that comes', () => {
+    const pieces = versionOf([
+      block(
+        'i',
+        {
+          type: 'intervals',
+          rounds: 1,
+          stations: [
+            { movement: 'goblet-squat', work: 30, rest: 20 },
+            { movement: 'floor-press', work: 30, rest: 0, sides: 'each' },
+          ],
+        },
+        { countIn: 0 },
+      ),
+    ])
+    const timeline = compile(pieces)
+    const next = utterancesOf(pieces, timeline).filter((one) => one.what === 'next')
+    expect(next.map((one) => `${one.atMs / 1_000} ${one.text}`)).toEqual([
+      '15 Next: rest',
+      '30 Next: Floor press, left',
+      '65 Next: Floor press, right',
+    ])
+  })
   it('names a rest, and calls time as session-spec has it', () => {
-    expect(nextText(version, { atMs: 0, what: 'next', block: 'r' })).toBe('Next: rest')
+    const { segments } = compile(version)
+    expect(nextText(version, segments, { atMs: 0, what: 'next', block: 'r' })).toBe('Next: rest')
     expect([callText(60, false), callText(30, false), callText(90, true)]).toEqual([
       '1 minute',
       '30 seconds',
       'Half-way',
     ])
+  })
+})
+
+describe('a long text', () => {
+  it('is said sentence by sentence, and no part is longer than 160 letters', () => {
+    expect(sentencesOf('Sit low. Then stand up tall!  Breathe out')).toEqual([
+      'Sit low.',
+      'Then stand up tall!',
+      'Breathe out',
+    ])
+    const parts = sentencesOf(words(80))
+    expect(parts.join(' ')).toBe(words(80))
+    expect(Math.max(...parts.map((part) => part.length))).toBeLessThanOrEqual(160)
   })
 })

@@ -4,6 +4,7 @@ import { markSound, markText } from '@/hooks/player/mark-text'
 import { createRunner } from '@/hooks/player/runner'
 import type { SoundName } from '@/hooks/player/ports'
 import { apply, marksAhead, newRun, positionAt } from '@/server/engine/timeline/run'
+import { compile } from '@/server/engine/timeline/compile'
 import type { Run } from '@/server/engine/timeline/run-types'
 import { playerFixture } from '../support/player-fixture'
 
@@ -158,7 +159,7 @@ describe('what marks say and sound', () => {
     [{ atMs: 0, what: 'next', block: 'rest-1' }, 'Next: rest', null],
     [{ atMs: 0, what: 'next', block: 'every-minute', round: 1, station: 1 }, 'Next: Push-up', null],
   ] as const)('%o', (mark, text, sound) => {
-    expect(markText(version, mark)).toBe(text)
+    expect(markText(version, compile(version).segments, mark)).toBe(text)
     expect(markSound(mark)).toBe(sound)
   })
 })

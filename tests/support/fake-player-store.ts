@@ -20,6 +20,10 @@ export const FAKE_PREFERENCES: PlayerPreferences = {
   distanceMetres: 2,
   soundVolume: 0.8,
   soundOn: true,
+  voiceOn: true,
+  voice: null,
+  voiceRate: 1,
+  voiceVolume: 0.9,
   lettersOn: true,
   keepHallDark: false,
 }
@@ -130,6 +134,8 @@ export function fakePlayer(
     notice: null,
     saving: { state: 'saved', unsent: 0, message: null },
     sound: 'ready',
+    voices: [{ id: 'anna', name: 'Anna', language: 'en' }],
+    caption: null,
     otherTab: false,
     setPreferences: (change) =>
       set((state) => ({ preferences: { ...state.preferences, ...change } })),
@@ -144,6 +150,7 @@ export function fakePlayer(
     goOn: note('goOn'),
     takeOver: note('takeOver'),
     playCount: note('playCount'),
+    tryVoice: note('tryVoice'),
     unlockSound: note('unlockSound'),
     setVolume: (soundVolume) =>
       set((state) => ({ preferences: { ...state.preferences, soundVolume } })),

@@ -23,6 +23,15 @@ export interface Sounded {
   isCalledOff: boolean
 }
 
+/** A text that was given to the voice; it is said until `done` is called, or it is cut. */
+export interface Said {
+  text: string
+  level: number
+  atMs: number
+  cutAtMs: number | null
+  done: () => void
+}
+
 export interface FakeServer {
   /** Every event that it has, by id. */
   events: Map<string, { attemptId: string; event: ClassEvent }>
@@ -71,6 +80,7 @@ export interface Tab {
   outbox: Outbox
   memory: PlayerMemory
   sounds: Sounded[]
+  said: Said[]
   awake: boolean
   /** The tab is gone without a word: nothing of its own runs on. */
   kill(): void
@@ -96,12 +106,13 @@ export function playerBench(change: Partial<PlayerData> = {}) {
   }
 
   async function openTab(
-    options: { memory?: PlayerMemory; data?: Partial<PlayerData> } = {},
+    options: { memory?: PlayerMemory; data?: Partial<PlayerData>; isMute?: boolean } = {},
   ): Promise<Tab> {
     const number = tabs.length
     const memory = options.memory ?? safeMemory(indexedMemory())
     const own = { ...data, ...options.data }
     const sounds: Sounded[] = []
+    const said: Said[] = []
     const outbox = createOutbox({
       memory,
       membershipId: own.membershipId,
@@ -156,6 +167,22 @@ export function playerBench(change: Partial<PlayerData> = {}) {
         },
         close: () => undefined,
       },
+      voice: {
+        watch(tell) {
+          tell(options.isMute ? [] : [{ id: 'anna', name: 'Anna', language: 'en' }])
+          return () => undefined
+        },
+        configure: () => undefined,
+        say(text, level, done) {
+          if (options.isMute) return null
+          const one: Said = { text, level, atMs: nowMs, cutAtMs: null, done }
+          said.push(one)
+          return () => {
+            one.cutAtMs = nowMs
+          }
+        },
+        close: () => undefined,
+      },
       memory,
       claims,
       newId,
@@ -174,6 +201,7 @@ export function playerBench(change: Partial<PlayerData> = {}) {
       outbox,
       memory,
       sounds,
+      said,
       awake: false,
       wake: null,
       isGone: false,
