@@ -24,8 +24,11 @@ test.use({ trace: 'off', screenshot: 'off' })
 
 /** `npm run bench` holds a run of five minutes to this as well. */
 const SOUND_MS = 10
-/** Two frames, and the 50 ms after which a piece's first number may come: the bench has the bar itself. */
-const PICTURE_MS = 34 + 50
+/**
+ * Two frames at 60 Hz. Here for the middle one of some twenty, since a busy computer drops frames; the
+ * bench holds the 95th of a hundred to it.
+ */
+const PICTURE_MS = 34
 
 const version = beepingClass({
   type: 'intervals',
@@ -36,13 +39,14 @@ const version = beepingClass({
   ],
 })
 
-// Class times, half way between two marks save where the class is paused.
+// Class times, half way between two marks.
 const HIDDEN_FROM_MS = 33_500
 const HIDDEN_TO_MS = 43_500
 const INTERRUPTED_FROM_MS = 44_500
 const INTERRUPTED_TO_MS = 46_500
-/** A mark of 48 s is on the audio clock by now and must be called off. */
-const PAUSED_AT_MS = 47_900
+/** The class is paused as its next mark, of 48 s, has been put on the audio clock: it must be called off. */
+const PAUSED_FROM_MS = 47_500
+const PAUSED_MARK_MS = 48_000
 const PAUSE_MS = 2_000
 const END_MS = 55_500
 
@@ -79,23 +83,29 @@ test('every mark sounds once and in time with its number: seen, hidden, interrup
     const started = await eventOf(events, 'started')
     const [startMs] = boundsOf(await readProbe(page), started)
 
-    // By the page's own timers, for a pause must fall between a mark's scheduling and its sound.
+    // By the page's own timers: the pause must fall between a mark's scheduling and its sound.
     await page.evaluate(
-      ({ interruptedMs, goesOnMs, pauseMs, resumeMs }) => {
+      ({ interruptedMs, goesOnMs, pausedFromMs, pauseMs }) => {
         const at = (ms: number, work: () => void) => setTimeout(work, ms - performance.now())
         const press = () => {
           document.body.dispatchEvent(new KeyboardEvent('keydown', { key: 'p', bubbles: true }))
         }
         at(interruptedMs, () => void window.soundProbe.context?.suspend())
         at(goesOnMs, () => void window.soundProbe.context?.resume())
-        at(pauseMs, press)
-        at(resumeMs, press)
+        const pauseAtNextMark = () => {
+          const { starts } = window.soundProbe.log
+          if (!starts.some((one) => one.atMs > pausedFromMs))
+            return void setTimeout(pauseAtNextMark)
+          press()
+          setTimeout(press, pauseMs)
+        }
+        at(pausedFromMs, pauseAtNextMark)
       },
       {
         interruptedMs: startMs + INTERRUPTED_FROM_MS,
         goesOnMs: startMs + INTERRUPTED_TO_MS,
-        pauseMs: startMs + PAUSED_AT_MS,
-        resumeMs: startMs + PAUSED_AT_MS + PAUSE_MS,
+        pausedFromMs: startMs + PAUSED_FROM_MS,
+        pauseMs: PAUSE_MS,
       },
     )
     await until(page, startMs + HIDDEN_FROM_MS)
@@ -125,12 +135,13 @@ test('every mark sounds once and in time with its number: seen, hidden, interrup
     await test.step('the class begins with its press', () => {
       const [earliest, latest] = boundsOf(log, started)
       expect(latest - earliest).toBeLessThan(150)
-      expect(paused.classMs).toBeGreaterThan(PAUSED_AT_MS - 20)
-      expect(paused.classMs).toBeLessThan(48_000)
+    })
+    await test.step('the pause called off a mark that was on the audio clock', () => {
+      expect(paused.classMs).toBeLessThan(PAUSED_MARK_MS)
       const calledOff = log.starts.filter(
         (one) => one.calledOffSeconds !== null && one.calledOffSeconds < one.whenSeconds,
       )
-      expect(calledOff.length, 'the pause came before its mark was on the clock').toBeGreaterThan(0)
+      expect(calledOff).toHaveLength(1)
     })
     await test.step('none missed, none doubled, none bunched', () => {
       expect(result.planned.length).toBeGreaterThan(25)
@@ -154,7 +165,8 @@ test('every mark sounds once and in time with its number: seen, hidden, interrup
       const seen = judgeSounds(log, plan, startMs + HIDDEN_FROM_MS)
       const lags = pictureLagsMs(log, seen)
       expect(lags.length).toBeGreaterThanOrEqual(15)
-      expect(percentile(lags, 0.95)).toBeLessThanOrEqual(PICTURE_MS)
+      expect(percentile(lags, 0.5)).toBeLessThanOrEqual(PICTURE_MS)
+      expect(Math.max(...lags)).toBeLessThan(500)
     })
     expect(errors).toEqual([])
   } finally {
