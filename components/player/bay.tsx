@@ -32,6 +32,7 @@ export function Bay({
   )
   const fresh = usePlayer((state) => state.due !== null && state.due.sinceMs < FRESH_MS)
   const text = dueText ?? fallback
+  const caption = usePlayer((state) => state.caption)
   return (
     <section
       aria-label="Cues"
@@ -62,6 +63,11 @@ export function Bay({
         {dueText}
       </p>
       {children}
+      {caption !== null && !text?.includes(caption) ? (
+        <p className={clsx('condensed', styles.caption)} data-testid="caption">
+          {caption}
+        </p>
+      ) : null}
       <CueLine />
     </section>
   )

@@ -15,6 +15,7 @@ import { reasonsText } from './option-column'
 import { usePlayer } from './player-context'
 import { figureOf, stationsOf, stationViews, threeOptions, type StationView } from './scene'
 import { SoundControls } from './sound-panel'
+import { VoiceControls } from './voice-controls'
 import { formatLine } from './format-line'
 import { stationAmount } from './station-list'
 import { lengthText, sidesText } from './texts'
@@ -173,6 +174,9 @@ export function BeforeClass({ timeZone }: { timeZone: string }) {
           </Section>
           <Section title="Sound">
             <SoundControls />
+          </Section>
+          <Section title="Voice">
+            <VoiceControls />
           </Section>
           <Section title="Screen">
             <ScreenChoice goFull={goFull} onGoFull={setGoFull} />

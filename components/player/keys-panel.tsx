@@ -5,7 +5,9 @@ import { usePlayer } from './player-context'
 
 const KEYS: readonly [string, string][] = [
   ['Space', 'Log round; in a rest 15 s more; in a brief go on'],
-  ['Page Down', 'the same, for a clicker in the hand; so does the media key ‘next’'],
+  ['Page Down', 'The same, for a clicker in the hand'],
+  ['Play, pause', 'Pause, and go on: media keys, headset, lock screen'],
+  ['Next', 'The media key: log round; in a brief or a rest, go on'],
   ['Backspace', 'Take the last round back'],
   ['P', 'Pause, and go on'],
   ['1', 'Easier option'],

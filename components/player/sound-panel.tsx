@@ -2,6 +2,7 @@
 import { ActionButton } from './button'
 import { Panel } from './panel'
 import { usePlayer } from './player-context'
+import { VoiceControls } from './voice-controls'
 
 /** Volume, the check by ear, and what to do where no sound comes. */
 export function SoundControls() {
@@ -22,7 +23,7 @@ export function SoundControls() {
         Sound on
       </label>
       <label className="grid gap-1">
-        <span>Volume, {Math.round(preferences.soundVolume * 100)} %</span>
+        <span>Volume of the sounds, {Math.round(preferences.soundVolume * 100)} %</span>
         <input
           type="range"
           min={0}
@@ -46,7 +47,7 @@ export function SoundControls() {
           ? 'Your browser holds the sound back until you press something here: play the count.'
           : sound === 'failed'
             ? 'No sound could be made here. Everything that sounds is on the screen as well.'
-            : 'A knock for the count, a bell for start and end, a soft double at half-time.'}
+            : 'A knock for the count, a bell to start, two low ones to end, a soft double at half-time.'}
       </p>
     </div>
   )
@@ -54,8 +55,11 @@ export function SoundControls() {
 
 export function SoundPanel({ onClose }: { onClose: () => void }) {
   return (
-    <Panel title="Sound" onClose={onClose}>
-      <SoundControls />
+    <Panel title="Sound and voice" onClose={onClose}>
+      <div className="grid gap-6 md:grid-cols-2">
+        <SoundControls />
+        <VoiceControls />
+      </div>
     </Panel>
   )
 }

@@ -6,12 +6,13 @@ import { browserSound } from './audio'
 import { browserClaims } from './claims'
 import { usualScreen } from './distance'
 import { deviceId, newId } from './ids'
-import { onMediaNext } from './media-session'
+import { browserMedia, mediaNow } from './media-session'
 import { browserMemory } from './memory'
 import { browserOutbox } from './outbox'
 import { keepPagesOnlyFor, keepThisPage } from './service-worker'
 import { createPlayer } from './store'
 import { startTicker } from './ticker'
+import type { Command, Position } from '@/server/engine/timeline/run-types'
 import type { PlayerStore } from './types'
 import { browserVoice } from './voice'
 import { browserWakeLock } from './wake-lock'
@@ -44,12 +45,22 @@ export function useBrowserPlayer(data: PlayerData): StoreApi<PlayerStore> | null
     setStore(player.store)
     void player.open()
     void keepPagesOnlyFor(data.membershipId).then(keepThisPage)
-    const endMediaNext = onMediaNext(() => {
-      const { stage, send } = player.store.getState()
-      if (stage === 'class') send({ type: 'log-round', by: 'member' })
+    const inClass = (command: (position: Position) => Command | null) => () => {
+      const { stage, position, send } = player.store.getState()
+      const wanted = stage === 'class' && position ? command(position) : null
+      if (wanted) send(wanted)
+    }
+    const media = browserMedia({
+      play: inClass(({ halted }) => (halted === 'paused' ? { type: 'resume' } : null)),
+      pause: inClass(({ halted }) => (halted ? null : { type: 'pause' })),
+      next: inClass(goOnCommand),
     })
+    const endMedia = player.store.subscribe(({ stage, run, position }) =>
+      media.show(mediaNow(data.version, stage === 'class' ? run : null, position)),
+    )
     return () => {
-      endMediaNext()
+      endMedia()
+      media.close()
       player.close()
       outbox.close()
       setStore(null)
@@ -58,6 +69,14 @@ export function useBrowserPlayer(data: PlayerData): StoreApi<PlayerStore> | null
     // eslint-disable-next-line react-hooks/exhaustive-deps
   }, [data.scheduledClass.scheduledClassId, data.membershipId])
   return store
+}
+
+/** What the key 'next' means: on to what comes, which in work is the next round. */
+function goOnCommand({ phase, segment, workedOff }: Position): Command | null {
+  if (phase === 'brief') return { type: 'pass-brief' }
+  if (segment?.kind === 'rest') return { type: 'cut-rest' }
+  if (segment?.kind !== 'work') return null
+  return workedOff ? { type: 'finish-block' } : { type: 'log-round', by: 'member' }
 }
 
 function safeLocalStorage(): Storage | null {

@@ -52,8 +52,10 @@ export function browserVoice(): VoicePort {
     },
     say(text, level, done) {
       if (!speech || isClosed || !settings.on || settings.volume === 0) return null
-      const wanted = settings.voice ?? choices[0]?.id
-      const voice = speech.getVoices().find((one) => one.voiceURI === wanted)
+      const voices = speech.getVoices()
+      const voice =
+        voices.find((one) => one.voiceURI === settings.voice) ??
+        voices.find((one) => one.voiceURI === choices[0]?.id)
       if (!voice) return null
       const utterance = new SpeechSynthesisUtterance(text)
       utterance.voice = voice
