@@ -119,7 +119,7 @@ export function WorkCount({
     }
     return (
       <Count
-        label={position.lead ? 'Lead, round' : 'Round'}
+        label="Round"
         number={String(position.lead?.round ?? position.round ?? (tally?.rounds ?? 0) + 1)}
         of={total ? `of ${total}` : null}
       >

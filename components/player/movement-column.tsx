@@ -55,7 +55,7 @@ export function RepsFigure({
     <>
       <div className={styles.reps} data-led={lead ? '' : undefined}>
         {lead ? (
-          <LeadCount lead={lead} />
+          <LeadCount lead={lead} coming={repsNow(view, lead.round)} />
         ) : scheme && view.reps !== null ? (
           <>
             <div className={clsx('condensed', styles.repsUnit)}>reps</div>
@@ -101,27 +101,38 @@ export function RepsFigure({
   )
 }
 
-/** 'rep 7 of 12, left': the number alone is large, what it counts stands above it. */
-function LeadCount({ lead }: { lead: NonNullable<Position['lead']> }) {
-  const isRep = lead.state === 'rep'
+/** 'rep 7 of 12, left': the number alone is large, what it counts up to stands beside it. */
+function LeadCount({
+  lead,
+  coming,
+}: {
+  lead: NonNullable<Position['lead']>
+  coming: number | null
+}) {
   const words = lead.isWaiting
     ? 'the lead waits'
     : lead.state === 'change'
-      ? 'change'
+      ? 'change, then'
       : lead.state === 'done'
         ? 'all done'
-        : `of ${lead.of}${lead.side ? `, ${lead.side}` : ''}`
+        : `rep${lead.side ? `, ${lead.side}` : ''}`
   return (
     <>
-      <div className={clsx('condensed', styles.repsUnit)} data-matters="" data-testid="lead">
+      <div
+        className={clsx('condensed', styles.repsUnit)}
+        data-matters={lead.side ? '' : undefined}
+        data-testid="lead"
+      >
         {words}
       </div>
       <div
         className={clsx('figures', styles.repsNumber)}
-        style={{ ['--unit' as string]: 'max(var(--distance), 5dvh)' }}
-        data-testid="lead-rep"
+        style={lead.side ? { ['--unit' as string]: 'max(var(--distance), 5dvh)' } : {}}
       >
-        {isRep ? lead.rep : lead.state === 'change' ? '–' : ''}
+        <span data-testid="lead-rep">{lead.state === 'rep' ? lead.rep : (coming ?? '')}</span>
+        {lead.state === 'rep' ? (
+          <span className={clsx('condensed', styles.repsOf)}>of {lead.of}</span>
+        ) : null}
       </div>
     </>
   )

@@ -125,7 +125,7 @@ export function createSpeaker(
         askedToMs = Math.max(askedToMs, nowMs)
         return
       }
-      if (current?.utterance.what === 'brief' && position.phase !== 'brief') end()
+      if (current?.utterance.what === 'brief' && briefIn !== position.segmentIndex) end()
       const due = dueOf(run, position, nowMs)
       waiting.push(...due)
       if (due.some((one) => one.what === 'safety') && current && isCutBySafety(current.utterance)) {
