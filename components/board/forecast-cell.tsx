@@ -2,7 +2,8 @@ import { RungCell, type CellRung } from '@/components/lane/rung-cell'
 import type { BoardDto } from '@/server/contract/board'
 import { blockPlan, roundReps } from '@/server/engine/pace/block-plan'
 import type { Block } from '@/server/engine/spec/schema'
-import { clockText } from '@/server/engine/tally/score'
+import { hasResult, scoreText } from '@/server/engine/tally/score'
+import { forecastBasisText, forecastText } from '@/server/contract/block-text'
 import type { BlockShape } from './block-shapes'
 
 interface ForecastCellProps {
@@ -23,10 +24,8 @@ export function ForecastCell({ dto, block, shape }: ForecastCellProps) {
     reps: roundReps(plan, index + 1) / Math.max(1, plan.stations.length),
     state: index === rounds - 1 ? 'forecast-last' : 'coming',
   }))
-  const score =
-    forecast.finishMs !== null
-      ? clockText(forecast.finishMs)
-      : `${forecast.rounds} + ${forecast.reps}`
+  const score = forecastText(forecast)
+  const done = middleScore(dto, block.id)
   return (
     <div className="flex items-center gap-1.5">
       <RungCell
@@ -37,7 +36,23 @@ export function ForecastCell({ dto, block, shape }: ForecastCellProps) {
         longestReps={shape.longestReps}
         label={`Forecast ${score}`}
       />
-      <span className="font-display text-[15px] tabular-nums">{score}</span>
+      <span
+        className="font-display text-[15px] leading-tight tabular-nums"
+        title={`Forecast ${forecastBasisText(forecast)}`}
+      >
+        {score}
+        {done ? <span className="block whitespace-nowrap text-text-quiet">done {done}</span> : null}
+      </span>
     </div>
   )
+}
+
+/** The score in the middle of those who are through with the block. */
+function middleScore(dto: BoardDto, blockId: string): string | null {
+  const done = dto.rows
+    .flatMap(({ tally }) => tally?.blocks.find((one) => one.block === blockId) ?? [])
+    .filter((one) => one.over && one.skipped === null && hasResult(one))
+    .sort((a, b) => a.totalReps - b.totalReps || (b.finishMs ?? 0) - (a.finishMs ?? 0))
+  const middle = done[Math.floor((done.length - 1) / 2)]
+  return middle ? scoreText(middle) : null
 }

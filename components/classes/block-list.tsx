@@ -1,10 +1,24 @@
 import { StillFigure } from '@/components/figure/still-figure'
-import { workNumber, formatText, stationNames, stationText } from '@/server/contract/block-text'
+import {
+  forecastBasisText,
+  forecastText,
+  formatText,
+  stationNames,
+  stationText,
+  workNumber,
+} from '@/server/contract/block-text'
+import type { ForecastDto } from '@/server/contract/paces'
 import type { AnyStation, Block } from '@/server/engine/spec/schema'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 
 /** Every block of a class with its stations, and the easier and harder ways of each. */
-export function BlockList({ version }: { version: PublishedVersion }) {
+export function BlockList({
+  version,
+  forecasts,
+}: {
+  version: PublishedVersion
+  forecasts: readonly ForecastDto[]
+}) {
   return (
     <ol>
       {version.spec.blocks.map((block) =>
@@ -14,6 +28,7 @@ export function BlockList({ version }: { version: PublishedVersion }) {
             version={version}
             block={block}
             stations={block.format.stations}
+            forecast={forecasts.find((one) => one.block === block.id)}
           />
         ),
       )}
@@ -25,9 +40,10 @@ interface BlockRowProps {
   version: PublishedVersion
   block: Block
   stations: readonly AnyStation[]
+  forecast: ForecastDto | undefined
 }
 
-function BlockRow({ version, block, stations }: BlockRowProps) {
+function BlockRow({ version, block, stations, forecast }: BlockRowProps) {
   const number = workNumber(version.spec.blocks, block)
   return (
     <li className="grid gap-x-8 gap-y-4 border-t-4 border-line pt-3 pb-7 sm:grid-cols-[11rem_1fr]">
@@ -37,6 +53,14 @@ function BlockRow({ version, block, stations }: BlockRowProps) {
           {block.title}
         </h3>
         <p className="mt-1 text-text-quiet">{formatText(block)}</p>
+        {forecast ? (
+          <p className="mt-1 leading-snug">
+            Forecast <strong className="tabular-nums">{forecastText(forecast)}</strong>
+            <span className="block text-[0.9em] text-text-quiet">
+              {forecastBasisText(forecast)}
+            </span>
+          </p>
+        ) : null}
       </div>
       <ul className="space-y-4">
         {stations.map((station, index) => (

@@ -4,6 +4,7 @@ import { buttonClass } from '@/components/ui/button'
 import { PageTitle } from '@/components/ui/heading'
 import type { ScheduledClassSummary } from '@/server/contract/classes'
 import { dayName, lengthText, windowText, type DateStyle } from '@/server/contract/format'
+import type { ForecastDto } from '@/server/contract/paces'
 import { paths } from '@/server/contract/paths'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import { BlockList } from './block-list'
@@ -12,6 +13,7 @@ import { ClassPicture } from './class-picture'
 interface ClassOverviewProps {
   scheduledClass: ScheduledClassSummary
   version: PublishedVersion
+  forecasts: readonly ForecastDto[]
   timeZone: string
   dateStyle: DateStyle
   now: Date
@@ -28,6 +30,7 @@ interface ClassOverviewProps {
 export function ClassOverview({
   scheduledClass,
   version,
+  forecasts,
   timeZone,
   dateStyle,
   now,
@@ -74,7 +77,7 @@ export function ClassOverview({
           ) : null}
         </div>
         <section aria-label="Blocks" className="min-w-0">
-          <BlockList version={version} />
+          <BlockList version={version} forecasts={forecasts} />
         </section>
       </div>
     </article>

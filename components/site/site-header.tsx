@@ -20,6 +20,7 @@ export function SiteHeader({ viewer }: { viewer: Viewer }) {
       ? [
           { href: paths.board(), text: 'Board', not: [paths.boardAll()] },
           { href: paths.boardAll(), text: 'All boards' },
+          { href: paths.planner(), text: 'Planner' },
         ]
       : []),
     ...(viewer.roles.includes('owner') ? [{ href: paths.gym(), text: 'Gym' }] : []),

@@ -1,9 +1,10 @@
 /** A block in words, for pages that list a class. */
 import { optionsOf } from '../engine/spec/options'
-import type { AnyStation, Block, Reps } from '../engine/spec/schema'
+import type { Anchor, AnyStation, Block, Reps } from '../engine/spec/schema'
 import type { PublishedVersion } from '../engine/spec/version'
 import { clockText } from '../engine/tally/score'
 import { plural } from './format'
+import type { ForecastDto } from './paces'
 
 /** '4, 6, 8 …', '12, 9, 6, 3', '10'. */
 export function repsText(reps: Reps): string {
@@ -47,6 +48,32 @@ export function formatText(block: Block): string {
     case 'rest':
       return clockText(format.seconds * 1_000)
   }
+}
+
+/** A forecast as a score is written: '7 + 4', or '6:12' where all rounds are done. */
+export function forecastText({ rounds, reps, finishMs }: ForecastDto): string {
+  return finishMs === null ? `${rounds} + ${reps}` : clockText(finishMs)
+}
+
+/** What a forecast rests on, in words. */
+export function forecastBasisText({ basis }: ForecastDto): string {
+  if (basis === null) return 'from the planned tempo'
+  const from = `from ${plural(basis.attempts, 'attempt')} here`
+  if (basis.medianErrorReps === null) return from
+  const reps = Math.round(basis.medianErrorReps)
+  return `${from}, usually within ${plural(Math.max(1, reps), 'rep')}`
+}
+
+/** When a cue falls due, for a coach: '0:45 in', '1:30 before the end', 'round 3', 'round 2, station 1'. */
+export function anchorText(block: Block, at: Anchor): string {
+  if ('from' in at) {
+    const clock = clockText(at.s * 1_000)
+    return at.from === 'start' ? `${clock} in` : `${clock} before the end`
+  }
+  const round = `round ${at.round ?? 1}`
+  if (!('station' in at)) return round
+  const stations = block.format.type === 'rest' ? 0 : block.format.stations.length
+  return stations > 1 ? `${round}, station ${at.station + 1}` : round
 }
 
 /** What a station asks for: '4, 6, 8 … reps, each side', '40 s work, 20 s rest'. */

@@ -2,6 +2,7 @@
 import type { PublishedVersion } from '../engine/spec/version'
 import type { AttemptTally } from '../engine/tally/types'
 import type { ScheduledClassSummary } from './classes'
+import type { ForecastDto } from './paces'
 
 export interface BoardRow {
   membershipId: string
@@ -21,21 +22,14 @@ export interface BoardRow {
   tally: AttemptTally | null
 }
 
-export interface BoardForecast {
-  block: string
-  rounds: number
-  reps: number
-  finishMs: number | null
-}
-
 export interface BoardDto {
   scheduledClass: ScheduledClassSummary
   /** IANA name of the gym's zone: times of day are in it. */
   timeZone: string
   versionId: string
   version: PublishedVersion
-  /** Forecast of every `rounds` and `for-time` block, 'expected' tiring. */
-  forecast: BoardForecast[]
+  /** Of every `rounds` and `for-time` block, at the expected pace. */
+  forecast: ForecastDto[]
   rows: BoardRow[]
   /** Grows with every change; an event stream carries it. */
   revision: number

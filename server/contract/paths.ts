@@ -14,6 +14,8 @@ export const paths = {
   boardOf: (scheduledClassId: string) => `/board/${scheduledClassId}`,
   boardAttempt: (scheduledClassId: string, attemptId: string) =>
     `/board/${scheduledClassId}/attempts/${attemptId}`,
+  planner: () => '/planner',
+  plannedClass: (classId: string) => `/planner/${encodeURIComponent(classId)}`,
   gym: () => '/gym',
   account: () => '/account',
   api: {
@@ -22,6 +24,8 @@ export const paths = {
     attempt: (attemptId: string) => `/api/v1/attempts/${attemptId}`,
     board: (scheduledClassId: string) => `/api/v1/boards/${scheduledClassId}`,
     boardCsv: (scheduledClassId: string) => `/api/v1/boards/${scheduledClassId}/csv`,
+    captions: (classId: string, kind: 'captions' | 'chapters') =>
+      `/api/v1/classes/${encodeURIComponent(classId)}/captions?kind=${kind}`,
     live: (scheduledClassIds: readonly string[]) =>
       `/api/v1/live?boards=${scheduledClassIds.map(encodeURIComponent).join(',')}`,
   },

@@ -13,12 +13,11 @@ import type { BoardDto, BoardRow, LiveBoardChange } from '@/server/contract/boar
 import { AppError } from '@/server/contract/errors'
 import type { Viewer } from '@/server/contract/viewer'
 import { noteForCoach } from '@/server/engine/fit/screening'
-import { forecast } from '@/server/engine/pace/forecast'
-import { TIRING } from '@/server/engine/pace/walk'
 import type { ClassEvent } from '@/server/engine/tally/events'
 import { fold } from '@/server/engine/tally/fold'
 import { getScheduledClass, versionsOf } from './classes'
 import { standingInputs } from './health'
+import { forecastsOf, getLearntPaces } from './paces'
 
 type AttemptRow = typeof attempts.$inferSelect
 
@@ -83,12 +82,7 @@ export const getBoard = timed(
       timeZone: viewer.gym.timeZone,
       versionId: scheduledClass.versionId,
       version,
-      forecast: forecast(version, { tiring: TIRING.expected }).map((one) => ({
-        block: one.block,
-        rounds: one.rounds,
-        reps: one.reps,
-        finishMs: one.finishSeconds === null ? null : Math.round(one.finishSeconds * 1_000),
-      })),
+      forecast: forecastsOf(version, await getLearntPaces(viewer, { now: params.now }, db)),
       rows,
       revision: all.reduce((sum, attempt) => sum + attempt.revision, 0),
       readAt: params.now.toISOString(),

@@ -109,7 +109,7 @@ function thrown(error: unknown): Outcome {
   throw error
 }
 
-const ids = () => ({ scheduledClassId: gym.scheduledClassId, attemptId })
+const ids = () => ({ scheduledClassId: gym.scheduledClassId, classId: gym.classId, attemptId })
 
 function files(folder: string, name: string): string[] {
   return readdirSync(folder, { recursive: true, encoding: 'utf8' })
@@ -258,6 +258,13 @@ function formFor(action: string): FormData {
     ),
     'health/clearHurtHold': { holdId, as: 'coach' },
     'kit/saveOwnKit': { dumbbell: '2' },
+    'planned-classes/importCues': {
+      classId: gym.classId,
+      basedOn: gym.versionId,
+      block: gym.version.spec.blocks[0]?.id ?? '',
+      timesFrom: 'block',
+      captions: 'WEBVTT\n\n00:05.000 --> 00:07.000\nShoulders down',
+    },
   }
   for (const [name, value] of Object.entries(fields[action] ?? {})) form.set(name, value)
   return form

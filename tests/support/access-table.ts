@@ -50,6 +50,8 @@ export const PAGES: Record<string, Row> = {
     '404',
     'sign-in',
   ),
+  '/planner': row('sign-in', '404', '404', 'ok', 'ok', '404', 'sign-in'),
+  '/planner/[classId]': row('sign-in', '404', '404', 'ok', '404', '404', 'sign-in'),
 }
 
 export const HANDLERS: Record<string, Row> = {
@@ -58,6 +60,7 @@ export const HANDLERS: Record<string, Row> = {
   'GET /api/v1/attempts/[attemptId]': row('401', 'ok', '404', 'ok', '404', '404', '401'),
   'GET /api/v1/boards/[scheduledClassId]': row('401', '404', '404', 'ok', '404', '404', '401'),
   'GET /api/v1/boards/[scheduledClassId]/csv': row('401', '404', '404', 'ok', '404', '404', '401'),
+  'GET /api/v1/classes/[classId]/captions': row('401', '404', '404', 'ok', '404', '404', '401'),
   'GET /api/v1/live': row('401', '404', '404', 'ok', '404', '404', '401'),
 }
 
@@ -113,6 +116,15 @@ export const ACTIONS: Record<string, Row> = {
   ),
   // The member's own hold, by everybody as the coach.
   'health/clearHurtHold': row(
+    'refused',
+    'refused',
+    'refused',
+    'ok',
+    'refused',
+    'refused',
+    'refused',
+  ),
+  'planned-classes/importCues': row(
     'refused',
     'refused',
     'refused',

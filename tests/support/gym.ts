@@ -28,6 +28,7 @@ export interface TestGym {
   gymId: string
   scheduledClassId: string
   versionId: string
+  classId: string
   version: PublishedVersion
   person(
     name: string,
@@ -50,10 +51,17 @@ export async function makeGym(
 ): Promise<TestGym> {
   const gymId = v7()
   const versionId = v7()
+  const classId = v7()
   const scheduledClassId = v7()
   const { version } = playerFixture()
   await db.insert(gyms).values({ id: gymId, name, timeZone: 'Europe/Oslo' })
-  await db.insert(classVersions).values({ id: versionId, gymId, classId: v7(), content: version })
+  await db.insert(classVersions).values({
+    id: versionId,
+    gymId,
+    classId,
+    content: version,
+    createdAt: new Date(NOW.getTime() - 7 * 86_400_000),
+  })
   await db.insert(scheduledClasses).values({
     id: scheduledClassId,
     gymId,
@@ -67,6 +75,7 @@ export async function makeGym(
     gymId,
     scheduledClassId,
     versionId,
+    classId,
     version,
     async person(personName, roles, { group, answered = true, passwordHash = NOBODY_KNOWS } = {}) {
       const personId = v7()

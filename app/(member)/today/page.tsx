@@ -17,6 +17,7 @@ import { paths } from '@/server/contract/paths'
 import type { Viewer } from '@/server/contract/viewer'
 import { getScheduledClass, listToday, nearestClasses } from '@/server/data/classes'
 import { defaultDb } from '@/server/data/db'
+import { forecastsOf, getLearntPaces } from '@/server/data/paces'
 import { getHealth } from '@/server/data/health'
 import { getKit } from '@/server/data/people'
 import { readerDateStyle } from '@/server/http/reader'
@@ -74,6 +75,7 @@ async function TodaysClass({ viewer, scheduledClass, now }: TodaysClassProps) {
     <ClassOverview
       scheduledClass={scheduledClass}
       version={version}
+      forecasts={forecastsOf(version, await getLearntPaces(viewer, { now }, db))}
       timeZone={timeZone}
       dateStyle={dateStyle}
       now={now}

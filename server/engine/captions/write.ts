@@ -189,7 +189,9 @@ export function captionsOf(version: PublishedVersion): string {
       const text = coachCues.get(`${mark.block}/${mark.id}`)?.text ?? ''
       cues.push(saidCue(cueId(mark.block, mark.id), atMs, text))
     } else if (mark.what === 'next') {
-      nexts.push(saidCue(`next/${nexts.length + 1}`, atMs, nextText(version, timeline.segments, mark) ?? ''))
+      nexts.push(
+        saidCue(`next/${nexts.length + 1}`, atMs, nextText(version, timeline.segments, mark) ?? ''),
+      )
     }
   }
   const chapters = chapterCues(version, timeline).map((chapter) => ({

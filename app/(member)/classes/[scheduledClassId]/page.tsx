@@ -8,6 +8,7 @@ import { orNotFound, requireViewer } from '@/server/auth/viewer'
 import { paths } from '@/server/contract/paths'
 import { getScheduledClass } from '@/server/data/classes'
 import { defaultDb } from '@/server/data/db'
+import { forecastsOf, getLearntPaces } from '@/server/data/paces'
 import { getHealth } from '@/server/data/health'
 import { getKit } from '@/server/data/people'
 import { readerDateStyle } from '@/server/http/reader'
@@ -40,6 +41,7 @@ export default async function ClassPage({ params }: PageProps) {
       <ClassOverview
         scheduledClass={scheduledClass}
         version={version}
+        forecasts={forecastsOf(version, await getLearntPaces(viewer, { now }, db))}
         timeZone={timeZone}
         dateStyle={dateStyle}
         now={now}
