@@ -128,6 +128,7 @@ export function observedBlocks(
         edit(spec, base, edits, event)
         break
       case 'paused':
+      case 'stopped':
         pausedMs ??= event.classMs
         break
       case 'resumed':
@@ -398,8 +399,8 @@ interface Fit {
  * Ann. Math. Statist. 42:1887; Huber & Ronchetti, Robust Statistics, 2nd ed. 2009, 1.4). f is, in each
  * attempt, the one with which Kendall's tau between where a round lies in its block and its observed ÷
  * predicted time is 0: the median over all pairs of rounds of one block, as Sen's slope is found (Theil
- * 1950; Sen 1968, JASA 63:1379), in a form that does not ask how fast the member is; then the median over
- * the attempts. Seconds a rep begin as planned. In each pass every option is multiplied by how many times
+ * 1950; Sen 1968, JASA 63:1379; bears 29 of 100 wrong rounds in one attempt), in a form that does not ask
+ * how fast the member is; then the median over the attempts. Seconds a rep begin as planned. In each pass every option is multiplied by how many times
  * its reps took as long as predicted: the median over its rounds in an attempt, then over its attempts,
  * each weighted by the option's share of the round's time, so that an attempt counts once however many
  * rounds it logged. Where no option moves any more, overestimates and underestimates balance for each, as
@@ -445,34 +446,33 @@ function learntOf(fit: Fit, key: string): { seconds: number; attempts: number } 
     : null
 }
 
-function isPositive(value: number): boolean {
-  return Number.isFinite(value) && value > 0
+/** Seconds, or reps: above what floating point loses, below a year of anything. */
+function isMeasure(value: number): boolean {
+  return value >= 1e-3 && value <= 1e7
 }
 
 function isUsableWork({ stations, changeSeconds }: ObservedWork): boolean {
   return (
-    Number.isFinite(changeSeconds) &&
-    changeSeconds >= 0 &&
+    (changeSeconds === 0 || isMeasure(changeSeconds)) &&
     stations.length > 0 &&
-    stations.every((one) => isPositive(one.reps) && isPositive(one.plannedSecondsPerRep))
+    stations.every((one) => isMeasure(one.reps) && isMeasure(one.plannedSecondsPerRep))
   )
 }
 
 /** Without what no figure could be reckoned from. */
 function withUsable(attempt: ObservedAttempt): ObservedAttempt {
   const blocks = attempt.blocks
-    .filter((block) => isPositive(block.blockSeconds))
+    .filter((block) => isMeasure(block.blockSeconds))
     .map((block) => ({
       ...block,
       rounds: block.rounds.filter(
         (round) =>
-          isPositive(round.durationSeconds) &&
-          Number.isFinite(round.startSeconds) &&
-          round.startSeconds >= 0 &&
+          isMeasure(round.durationSeconds) &&
+          (round.startSeconds === 0 || isMeasure(round.startSeconds)) &&
           isUsableWork(round),
       ),
       total:
-        block.total && isPositive(block.total.endSeconds) && isUsableWork(block.total)
+        block.total && isMeasure(block.total.endSeconds) && isUsableWork(block.total)
           ? block.total
           : null,
     }))
