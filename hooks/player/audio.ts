@@ -3,19 +3,10 @@
  * is none; but it starts sounds now, not at a time, so marks are put on its context as buffer sources.
  */
 import { Howl, Howler } from 'howler/dist/howler.core.min.js'
-import type { SoundName, SoundPort } from './ports'
+import { SOUND_NAMES, type SoundName } from '@/server/engine/timeline/mark-sound'
+import type { SoundPort } from './ports'
 import type { PlayerState } from './types'
 
-const NAMES: readonly SoundName[] = [
-  'knock',
-  'bell',
-  'bell-low',
-  'half',
-  'logged',
-  'call-60',
-  'call-30',
-  'call-10',
-]
 const addressOf = (name: SoundName) => `/sounds/${name}.wav`
 /** Loudspeakers without wires lag by up to this much; a timestamp further off is stale. */
 const MOST_LATENCY_SECONDS = 0.5
@@ -71,7 +62,7 @@ export function browserSound(): SoundPort {
     buffers.set(name, await context.decodeAudioData(await answer.arrayBuffer()))
   }
   function loadAll(): void {
-    Promise.all(NAMES.map(load)).then(
+    Promise.all(SOUND_NAMES.map(load)).then(
       () => {
         isBroken = false
         tell()

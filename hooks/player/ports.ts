@@ -1,10 +1,8 @@
 /** The browser as the player's store sees it: everything that a test replaces. */
 import type { ClassEvent } from '@/server/engine/tally/events'
+import type { SoundName } from '@/server/engine/timeline/mark-sound'
 import type { Place, RunSettings } from '@/server/engine/timeline/run-types'
 import type { PlayerPreferences, PlayerState } from './types'
-
-export type SoundName =
-  'knock' | 'bell' | 'bell-low' | 'half' | 'logged' | 'call-60' | 'call-30' | 'call-10'
 
 export interface SoundPort {
   /** Tells the state now and at every change. Returns the way to end it. */

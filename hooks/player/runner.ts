@@ -1,8 +1,9 @@
 /** Marks of a run as they fall due: each sounds once, none late, and the latest that says something is shown. */
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import { marksBetween } from '@/server/engine/timeline/run'
+import { markSound } from '@/server/engine/timeline/mark-sound'
 import type { DueMark, Run } from '@/server/engine/timeline/run-types'
-import { markSound, markText } from './mark-text'
+import { markText } from './mark-text'
 import type { SoundPort } from './ports'
 import type { RunClock } from './run-clock'
 import type { PlayerState } from './types'
@@ -63,7 +64,7 @@ export function createRunner(
       const toMs = nowMs + LOOK_AHEAD_MS
       let heardToMs = toMs
       for (const mark of marksBetween(run, askedToMs, toMs)) {
-        const name = markSound(mark)
+        const name = markSound(mark, run.timeline.segments[mark.segmentIndex]?.kind)
         if (!name || sounded.has(mark.key)) continue
         const isLate = nowMs - mark.dueAtMs > TOO_LATE_MS
         const callOff = isLate ? null : port.schedule(name, clock.toMonotonic(mark.dueAtMs))

@@ -1,8 +1,8 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { markSound, markText } from '@/hooks/player/mark-text'
+import { markText } from '@/hooks/player/mark-text'
 import { createRunner } from '@/hooks/player/runner'
-import type { SoundName } from '@/hooks/player/ports'
+import { markSound, type SoundName } from '@/server/engine/timeline/mark-sound'
 import { apply, marksAhead, newRun, positionAt } from '@/server/engine/timeline/run'
 import { compile } from '@/server/engine/timeline/compile'
 import type { Run } from '@/server/engine/timeline/run-types'
@@ -19,7 +19,7 @@ function started(): Run {
 /** Every sound of the class with its instant, by key. */
 function planned(run: Run) {
   return marksAhead(run, START_MS, 10_800_000).flatMap((mark) => {
-    const name = markSound(mark)
+    const name = markSound(mark, run.timeline.segments[mark.segmentIndex]?.kind)
     return name ? [{ key: `${name}@${mark.dueAtMs}`, dueAtMs: mark.dueAtMs }] : []
   })
 }
@@ -160,6 +160,12 @@ describe('what marks say and sound', () => {
     [{ atMs: 0, what: 'next', block: 'every-minute', round: 1, station: 1 }, 'Next: Push-up', null],
   ] as const)('%o', (mark, text, sound) => {
     expect(markText(version, compile(version).segments, mark)).toBe(text)
-    expect(markSound(mark)).toBe(sound)
+    expect(markSound(mark, 'work')).toBe(sound)
+  })
+
+  it('the end of a rest has a sound of its own, whatever comes after it', () => {
+    expect(markSound({ atMs: 0, what: 'beep', sound: 'start' }, 'rest')).toBe('rest-end')
+    expect(markSound({ atMs: 0, what: 'beep', sound: 'end' }, 'rest')).toBe('rest-end')
+    expect(markSound({ atMs: 0, what: 'beep', sound: 'start' }, 'count-in')).toBe('bell')
   })
 })

@@ -2,102 +2,127 @@ import { execFileSync } from 'node:child_process'
 import { mkdtempSync, readdirSync, readFileSync, rmSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
+import FFT from 'fft.js'
 import { describe, expect, it } from 'vitest'
+import { SOUND_NAMES, type SoundName } from '@/server/engine/timeline/mark-sound'
+import { LOUDNESS_RATE, loudnessOf, mostMomentary, truePeak } from '../support/loudness'
+import { readWav } from '@/scripts/lib/wav.mjs'
+import { onsetsOf } from '../support/onsets'
 
 const FOLDER = 'public/sounds'
-const RATE = 44_100
-const names = readdirSync(FOLDER).filter((name) => name.endsWith('.wav'))
+const fileOf = (name: SoundName) => readWav(readFileSync(join(FOLDER, `${name}.wav`)))
+const samplesOf = (name: SoundName) => fileOf(name).samples
 
-function samplesOf(name: string): Float64Array {
-  const file = readFileSync(join(FOLDER, name))
-  expect(file.toString('latin1', 0, 4) + file.toString('latin1', 8, 16)).toBe('RIFFWAVEfmt ')
-  expect([file.readUInt16LE(22), file.readUInt32LE(24), file.readUInt16LE(34)]).toEqual([
-    1,
-    RATE,
-    16,
-  ])
-  const count = file.readUInt32LE(40) / 2
-  return Float64Array.from(
-    { length: count },
-    (_, index) => file.readInt16LE(44 + 2 * index) / 32_768,
-  )
+/** What each is meant to be: its main frequency in hertz, its length in seconds, when its strokes begin. */
+const MEANT: Record<SoundName, { hertz: number; seconds: number; strokes: number[] }> = {
+  knock: { hertz: 620, seconds: 0.16, strokes: [0] },
+  bell: { hertz: 880, seconds: 1.1, strokes: [0] },
+  'bell-low': { hertz: 440, seconds: 1.42, strokes: [0, 0.42] },
+  'rest-end': { hertz: 740, seconds: 1.13, strokes: [0, 0.11, 0.33] },
+  half: { hertz: 660, seconds: 0.52, strokes: [0, 0.22] },
+  logged: { hertz: 1_400, seconds: 0.07, strokes: [0] },
+  'call-60': { hertz: 520, seconds: 0.64, strokes: [0, 0.17, 0.34, 0.51] },
+  'call-30': { hertz: 900, seconds: 0.41, strokes: [0, 0.14, 0.28] },
+  'call-10': { hertz: 1_050, seconds: 0.25, strokes: [0, 0.12] },
 }
 
-const rms = (part: Float64Array) =>
-  Math.sqrt(part.reduce((sum, value) => sum + value * value, 0) / part.length)
-
-function loudest(samples: Float64Array): number {
-  const length = Math.round(0.05 * RATE)
+/** The strongest frequency, by fft.js over the whole sound with silence behind it: hertz. */
+function mainHertz(samples: Float64Array): number {
+  const size = 131_072
+  const fft = new FFT(size)
+  const spectrum = fft.createComplexArray()
+  fft.realTransform(
+    spectrum,
+    Array.from({ length: size }, (_, at) => samples[at] ?? 0),
+  )
+  let best = 0
   let most = 0
-  for (let from = 0; from < samples.length; from += length >> 2) {
-    const part = samples.subarray(from, from + length)
-    if (part.length === length) most = Math.max(most, rms(part))
+  for (let bin = 1; bin < size / 2; bin += 1) {
+    const level = Math.hypot(spectrum[2 * bin] ?? 0, spectrum[2 * bin + 1] ?? 0)
+    if (level > most) [best, most] = [bin, level]
   }
-  return most
+  return (best * LOUDNESS_RATE) / size
 }
 
-/** Beginnings of strokes: where the level of 10 ms is four times that of the 20 ms before. */
-function strokes(samples: Float64Array): number {
-  const step = Math.round(0.01 * RATE)
-  const levels = Array.from({ length: Math.floor(samples.length / step) }, (_, index) =>
-    rms(samples.subarray(index * step, (index + 1) * step)),
+const sine = (hertz: number, peak: number) =>
+  Float64Array.from(
+    { length: LOUDNESS_RATE * 3 },
+    (_, at) => peak * Math.sin((2 * Math.PI * hertz * at) / LOUDNESS_RATE),
   )
-  const peak = Math.max(...levels)
-  let count = 0
-  let quietFor = 10
-  levels.forEach((level, index) => {
-    const before = Math.max(levels[index - 1] ?? 0, levels[index - 2] ?? 0)
-    const rises = level > 0.25 * peak && level > 1.6 * before && quietFor > 5
-    quietFor = rises ? 0 : quietFor + 1
-    if (rises) count += 1
+
+describe('the measure of loudness', () => {
+  it('gives what ITU-R BS.1770 annex 1 says of a full sine of 997 Hz in one channel: -3.01 LKFS', () => {
+    expect(loudnessOf([sine(997, 1)])).toBeCloseTo(-3.01, 1)
   })
-  return count
-}
+  it('gives what EBU Tech 3341, case 1, says of 1 kHz at -23 dBFS in both channels: -23.0 LUFS', () => {
+    const one = sine(1_000, 10 ** (-23 / 20))
+    expect(Math.abs(loudnessOf([one, one]) + 23)).toBeLessThan(0.1)
+  })
+})
 
 describe('the sounds of the player', () => {
   it('are what the script of the project makes, to the byte', () => {
     const folder = mkdtempSync(join(tmpdir(), 'floorside-sounds-'))
     execFileSync('node', ['scripts/sounds.mjs', folder])
-    expect(readdirSync(folder).sort()).toEqual([...names].sort())
+    const names = readdirSync(FOLDER).sort()
+    expect(readdirSync(folder).sort()).toEqual(names)
+    expect(names).toEqual(SOUND_NAMES.map((name) => `${name}.wav`).sort())
     for (const name of names) {
       expect(readFileSync(join(folder, name)).equals(readFileSync(join(FOLDER, name)))).toBe(true)
     }
     rmSync(folder, { recursive: true })
   })
 
-  it.each(names)(
-    '%s begins and ends at zero, so that nothing clicks, and is never clipped',
-    (name) => {
-      const samples = samplesOf(name)
-      expect(samples[0]).toBe(0)
-      expect(samples.at(-1)).toBeCloseTo(0, 3)
-      const peak = samples.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
-      expect(peak).toBeLessThan(0.9)
-      expect(peak).toBeGreaterThan(0.2)
-    },
-  )
-
-  it('are equally loud within 3 dB in their loudest 50 ms', () => {
-    const levels = names.map((name) => 20 * Math.log10(loudest(samplesOf(name))))
-    expect(Math.max(...levels) - Math.min(...levels)).toBeLessThan(3)
+  it.each(SOUND_NAMES)('%s begins and ends at zero, and rises to -1 dBTP at most', (name) => {
+    const samples = samplesOf(name)
+    expect(samples[0]).toBe(0)
+    expect(samples.at(-1)).toBe(0)
+    expect(truePeak(samples)).toBeLessThanOrEqual(-1)
   })
 
-  it('are told apart by rhythm: one stroke, two or three', () => {
-    expect(Object.fromEntries(names.map((name) => [name, strokes(samplesOf(name))]))).toEqual({
-      'bell-low.wav': 1,
-      'bell.wav': 1,
-      'call-10.wav': 2,
-      'call-30.wav': 3,
-      'call-60.wav': 1,
-      'half.wav': 2,
-      'knock.wav': 1,
-      'logged.wav': 1,
-    })
+  it('are equally loud within 1 LU, the click of a logged round 3 LU softer (momentary, BS.1770)', () => {
+    const levels = SOUND_NAMES.map((name) => ({ name, lufs: mostMomentary(samplesOf(name)) }))
+    const loud = levels.filter((one) => one.name !== 'logged').map((one) => one.lufs)
+    expect(Math.max(...loud) - Math.min(...loud)).toBeLessThan(1)
+    const click = levels.find((one) => one.name === 'logged')?.lufs ?? 0
+    expect(Math.min(...loud) - click).toBeGreaterThan(2)
+    expect(Math.max(...loud) - click).toBeLessThan(4)
+  })
+
+  it.each(SOUND_NAMES)('%s has the height and the length that it is meant to have', (name) => {
+    const { rate, samples } = fileOf(name)
+    expect(rate).toBe(LOUDNESS_RATE)
+    expect(Math.abs(mainHertz(samples) / MEANT[name].hertz - 1)).toBeLessThan(0.02)
+    expect(samples.length / rate).toBeCloseTo(MEANT[name].seconds, 2)
+  })
+
+  it.each(SOUND_NAMES)('%s has its strokes where they are meant to be', (name) => {
+    const onsets = onsetsOf(samplesOf(name), LOUDNESS_RATE)
+    expect(onsets).toHaveLength(MEANT[name].strokes.length)
+    for (const [index, at] of MEANT[name].strokes.entries()) {
+      expect(Math.abs((onsets[index] ?? 0) - at)).toBeLessThan(0.01)
+    }
+  })
+
+  it('are told apart without hearing height: by strokes, by the time between them, or by how long they ring', () => {
+    const all = Object.entries(MEANT)
+    for (const [one, a] of all) {
+      for (const [other, b] of all) {
+        if (one >= other) continue
+        const gap = (strokes: number[]) => (strokes[1] ?? 0) - (strokes[0] ?? 0)
+        const ratio = (x: number, y: number) => Math.max(x, y) / Math.min(x, y)
+        const isOther =
+          a.strokes.length !== b.strokes.length ||
+          (a.strokes.length > 1 && ratio(gap(a.strokes), gap(b.strokes)) > 1.2) ||
+          ratio(a.seconds, b.seconds) > 1.5
+        expect({ one, other, isOther }).toEqual({ one, other, isOther: true })
+      }
+    }
   })
 
   it('of the count are over before the next second', () => {
-    for (const name of ['knock.wav', 'logged.wav', 'half.wav', 'call-10.wav', 'call-30.wav']) {
-      expect(samplesOf(name).length / RATE).toBeLessThan(0.9)
+    for (const name of ['knock', 'logged', 'half', 'call-60', 'call-30', 'call-10'] as const) {
+      expect(samplesOf(name).length / LOUDNESS_RATE).toBeLessThan(0.9)
     }
   })
 })

@@ -4,10 +4,10 @@
  */
 import type { BrowserContext, Page } from '@playwright/test'
 import { clockText } from '@/components/player/texts'
-import { markSound } from '@/hooks/player/mark-text'
 import type { ClassEvent } from '@/server/engine/tally/events'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import { compile } from '@/server/engine/timeline/compile'
+import { soundsOf } from '@/server/engine/timeline/mark-sound'
 import type { Segment } from '@/server/engine/timeline/types'
 
 /** `…Ms`: performance.now() of the page; `…Seconds`: currentTime of its audio context. */
@@ -195,12 +195,10 @@ export function plannedSounds(
   startMs: number,
   pause: { classMs: number; ms: number } | null = null,
 ): PlannedSound[] {
-  const { marks, segments } = compile(version)
-  return marks.flatMap((mark) => {
-    const name = markSound(mark)
-    const later = pause && mark.atMs > pause.classMs ? pause.ms : 0
-    const atMs = startMs + mark.atMs + later
-    return name === null ? [] : [{ name, atMs, text: textAt(segments, mark.atMs) }]
+  const timeline = compile(version)
+  return soundsOf(timeline).map(({ atMs, name }) => {
+    const later = pause && atMs > pause.classMs ? pause.ms : 0
+    return { name, atMs: startMs + atMs + later, text: textAt(timeline.segments, atMs) }
   })
 }
 
