@@ -119,7 +119,11 @@ export function BoardTable({ dto, rows, view, nowMs, onSort }: BoardTableProps) 
             <td className="border-l-4 border-fill px-3">
               {dto.version.spec.intendedRpe !== undefined ? `${dto.version.spec.intendedRpe}` : ''}
             </td>
-            <td className="px-3 text-[13px] leading-tight">An estimate, at the expected tiring</td>
+            <td className="px-3 text-[13px] leading-tight">
+              {dto.forecast.some((one) => one.basis)
+                ? 'An estimate, from what members did before'
+                : 'An estimate, at the planned tempo'}
+            </td>
           </tr>
         </tbody>
         {groups.map((group) => (

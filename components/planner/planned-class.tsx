@@ -8,6 +8,7 @@ import { dateOf, lengthText, plural, type DateStyle } from '@/server/contract/fo
 import type { ForecastDto, LearntPacesDto } from '@/server/contract/paces'
 import type { PlannedClass } from '@/server/contract/planned-classes'
 import { advise } from '@/server/engine/spec/advice'
+import type { SessionSpec } from '@/server/engine/spec/schema'
 import { realLengthMs } from '@/server/engine/timeline/compile'
 
 interface PlannedClassPageProps {
@@ -89,6 +90,7 @@ export function PlannedClassPage({
               <ul className="mt-3 space-y-2.5">
                 {advice.map(({ path, message }) => (
                   <li key={`${path} ${message}`} className="border-l-6 border-present pl-3">
+                    <strong>{titleAt(spec, path)}</strong>
                     {message}
                   </li>
                 ))}
@@ -105,4 +107,11 @@ export function PlannedClassPage({
       </div>
     </article>
   )
+}
+
+/** 'Row and lunge: ' of a path into that block. */
+function titleAt(spec: SessionSpec, path: string): string {
+  const index = /^blocks\[(\d+)\]/.exec(path)?.[1]
+  const title = index === undefined ? undefined : spec.blocks[Number(index)]?.title
+  return title === undefined ? '' : `${title}: `
 }

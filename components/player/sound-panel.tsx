@@ -47,7 +47,7 @@ export function SoundControls() {
           ? 'Your browser holds the sound back until you press something here: play the count.'
           : sound === 'failed'
             ? 'No sound could be made here. Everything that sounds is on the screen as well.'
-            : 'A knock for the count, a bell to start, two low ones to end, a soft double at half-time.'}
+            : 'A knock for the count, a bell to start, two low bells to end, a quick three when a rest is over, a soft double at half-time.'}
       </p>
     </div>
   )
