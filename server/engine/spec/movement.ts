@@ -1,6 +1,6 @@
 /** A movement as it is frozen into a published version, and the trade's lists that describe one. */
 import { z } from 'zod'
-import { PATTERNS, POSITIONS, IMPACTS, JOINTS, REASONS, LEVELS } from './names'
+import { PATTERNS, POSITIONS, IMPACTS, JOINTS, MUSCLES, REASONS, LEVELS } from './names'
 import {
   changeSchema,
   oneOf,
@@ -45,6 +45,12 @@ export const movementSchema = z.object({
   position: oneOf(POSITIONS),
   impact: oneOf(IMPACTS),
   joints: z.array(oneOf(JOINTS)),
+  /** What works most, and what helps. Versions published before this was kept have none. */
+  muscles: z
+    .object({ primary: z.array(oneOf(MUSCLES)), secondary: z.array(oneOf(MUSCLES)) })
+    .optional(),
+  /** How it is done as a rule: what a planner puts into a station. */
+  sides: sidesSchema.optional(),
   kit: z.array(text(1, 60)),
   ...timing,
   /** Seconds to get from this movement to the station after it. */
@@ -61,6 +67,7 @@ export const movementSchema = z.object({
 
 export type Joint = (typeof JOINTS)[number]
 export type Reason = (typeof REASONS)[number]
+export type Muscle = (typeof MUSCLES)[number]
 export type Level = (typeof LEVELS)[number]
 export type MovementOption = z.infer<typeof movementOptionSchema>
 export type Movement = z.infer<typeof movementSchema>

@@ -32,6 +32,26 @@ export const JOINTS = [
   'elbow',
   'wrist',
 ] as const
+/** Muscle groups as coaches speak of them. */
+export const MUSCLES = [
+  'quads',
+  'glutes',
+  'hamstrings',
+  'calves',
+  'hip-flexors',
+  'inner-thighs',
+  'lower-back',
+  'upper-back',
+  'lats',
+  'chest',
+  'shoulders',
+  'biceps',
+  'triceps',
+  'forearms',
+  'abdominals',
+  'obliques',
+  'neck',
+] as const
 /** Why a member would take an option. */
 export const REASONS = [
   'load-too-heavy',
