@@ -10,6 +10,10 @@ import type { PlayerState } from './types'
 const addressOf = (name: SoundName) => `/sounds/${name}.wav`
 /** Loudspeakers without wires lag by up to this much; a timestamp further off is stale. */
 const MOST_LATENCY_SECONDS = 0.5
+/** How often an interrupted context (a call, a device that went away) is asked to go on. */
+const RETRY_MS = 1_000
+/** A context that says it runs and whose time stands still for so long has lost its device. */
+const STALLED_MS = 500
 /** What browsers take for a person's doing; a finger counts when it is lifted. */
 const GESTURES = ['pointerdown', 'pointerup', 'click', 'keydown'] as const
 
@@ -43,6 +47,10 @@ export function browserSound(): SoundPort {
   let volume = 1
   let isBroken = false
   let isClosed = false
+  /** Before the first gesture asking is futile; once sound has run, it may go on by itself. */
+  let hasRun = context?.state === 'running'
+  let retry: ReturnType<typeof setTimeout> | null = null
+  let seen = { contextTime: -1, atMs: 0 }
 
   const state = (): PlayerState['sound'] => {
     if (!isOn || volume === 0) return 'off'
@@ -93,15 +101,39 @@ export function browserSound(): SoundPort {
   const onVisible = () => {
     if (document.visibilityState === 'visible') onGesture()
   }
+  const askAgain = () => {
+    if (retry !== null || isClosed || !hasRun || context?.state === 'running') return
+    retry = setTimeout(() => {
+      retry = null
+      void resume().then(askAgain)
+    }, RETRY_MS)
+  }
   const onState = () => {
-    // What was scheduled on a context that stops would sound in a heap when it goes on.
-    if (context?.state !== 'running') for (const source of [...pending]) silence(source)
+    if (context?.state === 'running') hasRun = true
+    else {
+      // What was scheduled on a context that stops would sound in a heap when it goes on.
+      for (const source of [...pending]) silence(source)
+      askAgain()
+    }
     tell()
+  }
+  /** True where the device behind a running context has gone: it is set going again on the present one. */
+  const isStalled = (running: AudioContext): boolean => {
+    const nowMs = performance.now()
+    if (running.currentTime !== seen.contextTime) {
+      seen = { contextTime: running.currentTime, atMs: nowMs }
+      return false
+    }
+    if (nowMs - seen.atMs < STALLED_MS) return false
+    seen.atMs = nowMs
+    void running.suspend().catch(() => undefined)
+    return true
   }
   document.addEventListener('visibilitychange', onVisible)
   window.addEventListener('online', onGesture)
   for (const gesture of GESTURES) document.addEventListener(gesture, onGesture)
   context?.addEventListener('statechange', onState)
+  navigator.mediaDevices?.addEventListener?.('devicechange', onGesture)
 
   return {
     watch(watcher) {
@@ -126,7 +158,7 @@ export function browserSound(): SoundPort {
         return () => clearTimeout(timer)
       }
       const buffer = buffers.get(name)
-      if (!buffer) return null
+      if (!buffer || isStalled(context)) return null
       const source = context.createBufferSource()
       source.buffer = buffer
       source.connect(Howler.masterGain)
@@ -144,6 +176,8 @@ export function browserSound(): SoundPort {
       window.removeEventListener('online', onGesture)
       for (const gesture of GESTURES) document.removeEventListener(gesture, onGesture)
       context?.removeEventListener('statechange', onState)
+      navigator.mediaDevices?.removeEventListener?.('devicechange', onGesture)
+      if (retry !== null) clearTimeout(retry)
       players.forEach((player) => player.unload())
     },
   }

@@ -24,6 +24,9 @@ class FakeContext extends EventTarget {
     if (!this.isGesture) throw new DOMException('no gesture', 'NotAllowedError')
     this.become('running')
   }
+  async suspend() {
+    this.become('suspended')
+  }
   become(state: FakeContext['state']) {
     this.state = state
     this.dispatchEvent(new Event('statechange'))
@@ -129,6 +132,42 @@ describe('the browser’s sound', () => {
     context.become('suspended')
     expect(context.sources.map((source) => source.isStopped)).toEqual([true])
     expect(states.at(-1)).toBe('blocked')
+  })
+
+  it('asks an interrupted context again every second until it goes on, and once it never ran asks nothing', async () => {
+    vi.useFakeTimers()
+    try {
+      const resumes = vi.spyOn(context, 'resume')
+      context.become('suspended')
+      await vi.advanceTimersByTimeAsync(5_000)
+      expect(resumes).not.toHaveBeenCalled()
+      context.become('running')
+      context.become('suspended')
+      await vi.advanceTimersByTimeAsync(3_100)
+      expect(resumes).toHaveBeenCalledTimes(3)
+      expect(states.at(-1)).toBe('blocked')
+      context.isGesture = true
+      await vi.advanceTimersByTimeAsync(1_000)
+      expect(states.at(-1)).toBe('ready')
+      await vi.advanceTimersByTimeAsync(5_000)
+      expect(resumes).toHaveBeenCalledTimes(4)
+    } finally {
+      vi.useRealTimers()
+    }
+  })
+
+  it('sets a context going anew whose time stands still: its device has gone', () => {
+    context.become('running')
+    context.currentTime = 7
+    const clock = vi.spyOn(performance, 'now')
+    clock.mockReturnValue(1_000)
+    expect(sound.schedule('knock', 1_100)).not.toBeNull()
+    clock.mockReturnValue(1_400)
+    expect(sound.schedule('knock', 1_500)).not.toBeNull()
+    clock.mockReturnValue(1_600)
+    expect(sound.schedule('knock', 1_700)).toBeNull()
+    expect(context.state).toBe('suspended')
+    clock.mockRestore()
   })
 
   it('is off at volume 0 or when switched off', () => {
