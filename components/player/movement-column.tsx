@@ -120,14 +120,14 @@ function LeadCount({
     <>
       <div
         className={clsx('condensed', styles.repsUnit)}
-        data-matters={lead.side ? '' : undefined}
+        data-matters={words === 'rep' ? undefined : ''}
         data-testid="lead"
       >
         {words}
       </div>
       <div
         className={clsx('figures', styles.repsNumber)}
-        style={lead.side ? { ['--unit' as string]: 'max(var(--distance), 5dvh)' } : {}}
+        style={words === 'rep' ? {} : { ['--unit' as string]: 'max(var(--distance), 5dvh)' }}
       >
         <span data-testid="lead-rep">{lead.state === 'rep' ? lead.rep : (coming ?? '')}</span>
         {lead.state === 'rep' ? (

@@ -2,7 +2,7 @@ import AxeBuilder from '@axe-core/playwright'
 import { expect, test, type Page } from '@playwright/test'
 import { signedIn, visitor } from './gym'
 
-// Nine pages at three sizes, looked at by axe: a busy computer takes its time.
+// Many pages at three sizes, looked at by axe: a busy computer takes its time.
 test.setTimeout(300_000)
 
 const SIZES = [
@@ -71,7 +71,11 @@ test('every page of a coach and an owner is sound for axe and at every size', as
   await coach.page.waitForURL(/\/board\//)
   const board = new URL(coach.page.url()).pathname
   const attempt = await coach.page.locator('a[href*="/attempts/"]').first().getAttribute('href')
-  for (const address of [board, attempt ?? '', '/board/all']) await isSound(coach.page, address)
+  await coach.page.goto('/planner')
+  const planned = await coach.page.locator('a[href^="/planner/"]').first().getAttribute('href')
+  for (const address of [board, attempt ?? '', '/board/all', '/planner', planned ?? '']) {
+    await isSound(coach.page, address)
+  }
   expect(coach.errors).toEqual([])
   await coach.context.close()
   const owner = await signedIn(browser, 'Marta Lindqvist')

@@ -26,7 +26,7 @@ test('each role lands where its work is', async ({ browser }) => {
 
 test('a page that is somebody else’s is not there', async ({ browser }) => {
   const { page, context } = await signedIn(browser, 'Dov Lindgren')
-  for (const address of ['/board', '/gym', '/board/all']) {
+  for (const address of ['/board', '/gym', '/board/all', '/planner']) {
     const answer = await page.goto(address)
     expect(answer?.status(), address).toBe(404)
     await expect(page.getByRole('heading', { name: 'Nothing here' })).toBeVisible()
