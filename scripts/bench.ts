@@ -1,8 +1,10 @@
 /** What `npm run bench` measures and shows; see bench.mjs. */
 import { performance } from 'node:perf_hooks'
 import { demoMovements } from '@/db/seed/movements'
+import { blockPlan } from '@/server/engine/pace/block-plan'
 import { forecast } from '@/server/engine/pace/forecast'
-import { TIRING } from '@/server/engine/pace/walk'
+import { leadSchedule } from '@/server/engine/pace/lead'
+import { FROM_THE_START, TIRING } from '@/server/engine/pace/walk'
 import { check } from '@/server/engine/spec/problems'
 import type { Block, Cue } from '@/server/engine/spec/schema'
 import type { PublishedVersion } from '@/server/engine/spec/version'
@@ -138,8 +140,12 @@ function engineRows(): BenchRow[] {
       10,
     ),
     timeRow(
-      'forecast a block of ten minutes',
-      medianMs(() => forecast(ten, { tiring: TIRING.expected })),
+      'forecast and lead of a block of ten minutes',
+      medianMs(() => {
+        forecast(ten, { tiring: TIRING.expected })
+        const plan = blockPlan(ten, ten.spec.blocks[0] as Block)
+        return plan && leadSchedule(plan, FROM_THE_START)
+      }),
       1,
     ),
   ]

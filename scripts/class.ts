@@ -1,4 +1,4 @@
-/** `npm run --silent class -- check|compile|forecast|score FILE …`; see class-command.ts. */
+/** `npm run --silent class -- check|compile|forecast|score|captions FILE …`; see class-command.ts. */
 import { classCommand } from './class-command'
 
 const { code, stdout, stderr } = classCommand(process.argv.slice(2))
