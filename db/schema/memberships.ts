@@ -1,4 +1,5 @@
-import { index, jsonb, pgTable, text, unique } from 'drizzle-orm/pg-core'
+import { boolean, index, jsonb, pgTable, text, unique } from 'drizzle-orm/pg-core'
+import type { Reason } from '@/server/engine/spec/movement'
 import { createdAt, id, instant } from './columns'
 import { gyms } from './gyms'
 import { people } from './people'
@@ -24,6 +25,11 @@ export const memberships = pgTable(
     guardianConsentAt: instant('guardian_consent_at'),
     /** Own kit: item → how many. */
     kit: jsonb('kit').$type<Record<string, number>>().notNull().default({}),
+    /** What the pieces weigh, in kilograms: item → weights. */
+    kitWeights: jsonb('kit_weights').$type<Record<string, number[]>>().notNull().default({}),
+    /** What the body objects to. Health data. */
+    bodyNotes: jsonb('body_notes').$type<Reason[]>().notNull().default([]),
+    wantsMore: boolean('wants_more').notNull().default(false),
     createdAt: createdAt(),
   },
   (table) => [

@@ -1,4 +1,4 @@
-import { jsonb, pgTable, text, unique } from 'drizzle-orm/pg-core'
+import { boolean, jsonb, pgTable, text, unique } from 'drizzle-orm/pg-core'
 import type { Movement } from '@/server/engine/spec/movement'
 import { createdAt, id, instant } from './columns'
 import { gyms } from './gyms'
@@ -12,9 +12,11 @@ export const movements = pgTable(
       .notNull()
       .references(() => gyms.id, { onDelete: 'cascade' }),
     slug: text('slug').notNull(),
+    /** Came with the product and is never changed: a gym's own copy of the same slug stands before it. */
+    builtIn: boolean('built_in').notNull().default(false),
     content: jsonb('content').$type<Movement>().notNull(),
     archivedAt: instant('archived_at'),
     createdAt: createdAt(),
   },
-  (table) => [unique('movements_gym_slug_key').on(table.gymId, table.slug)],
+  (table) => [unique('movements_gym_slug_key').on(table.gymId, table.slug, table.builtIn)],
 )
