@@ -143,6 +143,7 @@ export async function seedDemoGym(
         gymId,
         slug: content.slug,
         content,
+        builtIn: true,
         createdAt: founded,
       })),
     )
