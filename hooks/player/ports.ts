@@ -2,7 +2,7 @@
 import type { ClassEvent } from '@/server/engine/tally/events'
 import type { SoundName } from '@/server/engine/timeline/mark-sound'
 import type { Place, RunSettings } from '@/server/engine/timeline/run-types'
-import type { PlayerPreferences, PlayerState } from './types'
+import type { PlayerPreferences, PlayerState, VoiceChoice } from './types'
 
 export interface SoundPort {
   /** Tells the state now and at every change. Returns the way to end it. */
@@ -14,14 +14,6 @@ export interface SoundPort {
   /** Sounds at an instant of the monotonic clock. Returns the way to call it off; null where sound does not run. */
   schedule(name: SoundName, atMs: number): (() => void) | null
   close(): void
-}
-
-/** A voice of this computer. */
-export interface VoiceChoice {
-  id: string
-  name: string
-  /** BCP 47. */
-  language: string
 }
 
 export interface VoiceSettings {

@@ -3,7 +3,14 @@ import type { PlacedMark, Position, Run, Command } from '@/server/engine/timelin
 import type { AttemptTally } from '@/server/engine/tally/types'
 import type { ClassEvent, Counting } from '@/server/engine/tally/events'
 import type { PlayerData } from '@/server/contract/classes'
-import type { VoiceChoice } from './ports'
+
+/** A voice of this computer. */
+export interface VoiceChoice {
+  id: string
+  name: string
+  /** BCP 47. */
+  language: string
+}
 
 /** Chosen before class and kept in the browser for the next one. */
 export interface PlayerPreferences {

@@ -1,5 +1,6 @@
 /** The browser's speech synthesis: which voices there are, and saying one text at a time. */
-import type { VoiceChoice, VoicePort, VoiceSettings } from './ports'
+import type { VoicePort, VoiceSettings } from './ports'
+import type { VoiceChoice } from './types'
 
 /** `null` where the browser has no speech at all. */
 function synthesis(): SpeechSynthesis | null {
