@@ -19,6 +19,12 @@ const version = versionOf([
     },
     { countIn: 5, brief: 'Two short pieces.' },
   ),
+  // Long enough for half-way, and for every call beside it.
+  block('long', {
+    type: 'intervals',
+    rounds: 1,
+    stations: [{ movement: 'goblet-squat', work: 140, rest: 0 }],
+  }),
 ])
 
 /** Further strokes of a sound, in milliseconds after its first (scripts/sounds.mjs). */
@@ -46,17 +52,40 @@ describe('the recording of a block', () => {
     expect(sounds.filter((one) => one.sound === 'rest-end')).toHaveLength(1)
   })
 
-  it('sounds each within 10 ms of plan, and nothing else, as a detector of onsets hears it', () => {
-    const sounds = soundsOfBlock(version, 'pieces')
-    const { rate, samples } = readWav(recordingOf(sounds, 'public/sounds'))
-    const heard = onsetsOf(samples, rate).map((at) => at * 1_000)
-    const expected = sounds
-      .flatMap(({ atMs, sound }) => [atMs, ...(INNER[sound] ?? []).map((more) => atMs + more)])
-      .sort((a, b) => a - b)
-    expect(heard).toHaveLength(expected.length)
-    const off = heard.map((at, index) => Math.abs(at - (expected[index] ?? Infinity)))
-    expect(Math.max(...off)).toBeLessThan(10)
+  it('holds half-way and each call of a long piece', () => {
+    // Count-in of 5 s (3, 2, 1, start), work of 140 s (half, 60 s, 30 s and 10 s calls, 5 to 1, end).
+    const sounds = soundsOfBlock(version, 'long').filter((one) => one.sound !== 'knock')
+    expect(sounds).toEqual([
+      { atMs: 5_000, sound: 'bell' },
+      { atMs: 75_000, sound: 'half' },
+      { atMs: 85_000, sound: 'call-60' },
+      { atMs: 115_000, sound: 'call-30' },
+      { atMs: 135_000, sound: 'call-10' },
+      { atMs: 145_000, sound: 'bell-low' },
+    ])
   })
+
+  it.each([
+    ['pieces', 0, 24],
+    // From shortly before half-way: a minute of silence first would only take long to listen to.
+    ['long', 70_000, 18],
+  ])(
+    'sounds each of %s (from %i ms) within 10 ms of plan, and nothing else, as a detector of onsets hears it',
+    (id, fromMs, strokes) => {
+      const sounds = soundsOfBlock(version, id)
+        .filter((one) => one.atMs >= fromMs)
+        .map((one) => ({ ...one, atMs: one.atMs - fromMs }))
+      const { rate, samples } = readWav(recordingOf(sounds, 'public/sounds'))
+      const heard = onsetsOf(samples, rate).map((at) => at * 1_000)
+      const expected = sounds
+        .flatMap(({ atMs, sound }) => [atMs, ...(INNER[sound] ?? []).map((more) => atMs + more)])
+        .sort((a, b) => a - b)
+      expect(heard).toHaveLength(strokes)
+      expect(expected).toHaveLength(strokes)
+      const off = heard.map((at, index) => Math.abs(at - (expected[index] ?? Infinity)))
+      expect(Math.max(...off)).toBeLessThan(10)
+    },
+  )
 
   it('is written by one command, which says what it placed, or what is wrong with the call', () => {
     const folder = mkdtempSync(join(tmpdir(), 'floorside-recording-'))
