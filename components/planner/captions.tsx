@@ -45,7 +45,7 @@ export function Captions({ planned }: { planned: PlannedClass }) {
           Download chapters
         </a>
       </p>
-      <ImportForm key={planned.versionId} planned={planned} />
+      <ImportForm planned={planned} />
     </>
   )
 }
@@ -61,6 +61,12 @@ function ImportForm({ planned }: { planned: PlannedClass }) {
   const [text, setText] = useState('')
   const [fileProblem, setFileProblem] = useState<string | undefined>()
   const fields = result && !result.ok ? result.fields : undefined
+  // What was imported is in the class now: the form is empty for the next.
+  const [done, setDone] = useState(result)
+  if (result !== done) {
+    setDone(result)
+    if (result?.ok) setText('')
+  }
 
   async function read(file: File | undefined): Promise<void> {
     if (!file) return

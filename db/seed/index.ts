@@ -186,7 +186,8 @@ export async function seedDemoGym(
       for (const name of planned ? [planned, 'breakwater' as const] : ['breakwater' as const]) {
         const published = versions.get(name)
         if (!published) continue
-        const scheduledClassId = newId(new Date(day.getTime()))
+        // Ids order what opens at once: the day's own class comes before the short one.
+        const scheduledClassId = newId(new Date(day.getTime() + (name === planned ? 0 : 1)))
         await tx.insert(scheduledClasses).values({
           id: scheduledClassId,
           gymId,
