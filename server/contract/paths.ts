@@ -16,6 +16,10 @@ export const paths = {
     `/board/${scheduledClassId}/attempts/${attemptId}`,
   planner: () => '/planner',
   plannedClass: (classId: string) => `/planner/${encodeURIComponent(classId)}`,
+  library: () => '/library',
+  newMovement: () => '/library/new',
+  movement: (slug: string) => `/library/${encodeURIComponent(slug)}`,
+  editMovement: (slug: string) => `/library/${encodeURIComponent(slug)}/edit`,
   gym: () => '/gym',
   account: () => '/account',
   api: {

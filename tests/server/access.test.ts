@@ -5,6 +5,7 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it, vi } from 'vites
 import { eq } from 'drizzle-orm'
 import { hurtHolds } from '@/db/schema/hurt-holds'
 import { memberships } from '@/db/schema/memberships'
+import { movements } from '@/db/schema/movements'
 import type { Viewer } from '@/server/contract/viewer'
 import { AppError, ERROR_STATUS } from '@/server/contract/errors'
 import { HEALTH_QUESTIONS } from '@/server/engine/fit/screening'
@@ -18,6 +19,7 @@ import {
 } from '../support/access-table'
 import { makeTestDatabase, type TestDatabase } from '../support/database'
 import { makeGym, NOW, stamped, type TestGym } from '../support/gym'
+import { movementForm } from '../support/library-form'
 
 let test: TestDatabase
 let token: string | null = null
@@ -42,6 +44,7 @@ vi.mock('@/components/player/player', () => ({ Player: () => null }))
 let gym: TestGym
 let attemptId: string
 let holdId: string
+let slug: string
 const people = new Map<Visitor, Viewer>()
 const tokens = new Map<Visitor, string | null>()
 
@@ -51,6 +54,12 @@ beforeAll(async () => {
   test = await makeTestDatabase()
   gym = await makeGym(test.db, 'First gym')
   const second = await makeGym(test.db, 'Second gym')
+  const [content] = gym.version.movements
+  if (!content) throw new Error('no movement')
+  slug = content.slug
+  await test.db
+    .insert(movements)
+    .values({ id: v7(), gymId: gym.gymId, slug, content, builtIn: true })
   people.set('member', await gym.person('Member', ['member']))
   people.set('other-member', await gym.person('Other', ['member']))
   people.set('coach', await gym.person('Coach', ['coach']))
@@ -109,7 +118,12 @@ function thrown(error: unknown): Outcome {
   throw error
 }
 
-const ids = () => ({ scheduledClassId: gym.scheduledClassId, classId: gym.classId, attemptId })
+const ids = () => ({
+  scheduledClassId: gym.scheduledClassId,
+  classId: gym.classId,
+  attemptId,
+  slug,
+})
 
 function files(folder: string, name: string): string[] {
   return readdirSync(folder, { recursive: true, encoding: 'utf8' })
@@ -244,6 +258,7 @@ describe('route handlers', () => {
 })
 
 function formFor(action: string): FormData {
+  if (action === 'library/saveMovement') return movementForm({ slug, over: 'on' })
   const form = new FormData()
   const fields: Record<string, Record<string, string>> = {
     'account/signIn': { email: people.get('member')?.email ?? '', password: 'wrong' },
