@@ -24,9 +24,18 @@ export function soundsOfBlock(version: PublishedVersion, block: string): Recorde
   const own = timeline.segments.filter((segment) => segment.block === block)
   const startMs = own[0]?.startMs ?? 0
   const endMs = own.at(-1)?.endMs ?? 0
-  return soundsOf(timeline)
-    .filter(({ atMs }) => atMs > startMs && atMs <= endMs)
+  const sounds = soundsOf(timeline)
+    .filter(({ atMs, mark }) =>
+      // What ends the block before sounds at this one's beginning: it belongs here where it starts work.
+      atMs === startMs
+        ? mark.what === 'beep' && mark.sound === 'start'
+        : atMs > startMs && atMs <= endMs,
+    )
     .map(({ atMs, name }) => ({ atMs: atMs - startMs, sound: name }))
+  // Work that a brief, or the start of the class, leads straight into is begun by the player's own bell.
+  const first = own.find((segment) => segment.kind !== 'brief')
+  const isUnannounced = first?.kind === 'work' && !sounds.some((one) => one.atMs === 0)
+  return isUnannounced ? [{ atMs: 0, sound: 'bell' }, ...sounds] : sounds
 }
 
 /** The recording of `sounds` as a WAV file. `folder`: where the player's sounds lie. */

@@ -7,7 +7,7 @@ test('a member who follows the lead is counted for, rep by rep, and the rounds r
   browser,
 }) => {
   const coach = await signedIn(browser, 'Tomasz Brandt')
-  const member = await signedIn(browser, 'Nadia Ferrante')
+  const member = await signedIn(browser, 'Carmen Oyelaran')
   const { page } = member
   await page.getByRole('link', { name: 'Breakwater' }).click()
   await page.waitForURL(/\/classes\//)
@@ -21,7 +21,7 @@ test('a member who follows the lead is counted for, rep by rep, and the rounds r
   await expect(page.getByTestId('lead-rep')).toHaveText('1', { timeout: 15_000 })
   await expect(page.getByText('of 2', { exact: true })).toBeVisible()
   await expect(page.getByTestId('lead-rep')).toHaveText('2', { timeout: 10_000 })
-  const row = coach.page.getByRole('row').filter({ hasText: 'Nadia Ferrante' })
+  const row = coach.page.getByRole('row').filter({ hasText: 'Carmen Oyelaran' })
   await expect(row).toContainText('1 + 0', { timeout: 40_000 })
   await page.getByRole('button', { name: /^Leave the lead/ }).click()
   await expect(page.getByTestId('lead')).toHaveCount(0)

@@ -52,6 +52,25 @@ describe('the recording of a block', () => {
     expect(sounds.filter((one) => one.sound === 'rest-end')).toHaveLength(1)
   })
 
+  it('begins with the bell where a brief leads straight into work, as the player does', () => {
+    const straight = versionOf([
+      block(
+        'b',
+        { type: 'holds', stations: [{ movement: 'goblet-squat', seconds: 8 }] },
+        { brief: 'Hold.', countIn: 0 },
+      ),
+      block(
+        'after',
+        { type: 'holds', stations: [{ movement: 'goblet-squat', seconds: 5 }] },
+        { countIn: 0 },
+      ),
+    ])
+    expect(soundsOfBlock(straight, 'b')[0]).toEqual({ atMs: 0, sound: 'bell' })
+    expect(soundsOfBlock(straight, 'after').filter((one) => one.atMs === 0)).toEqual([
+      { atMs: 0, sound: 'bell' },
+    ])
+  })
+
   it('holds half-way and each call of a long piece', () => {
     // Count-in of 5 s (3, 2, 1, start), work of 140 s (half, 60 s, 30 s and 10 s calls, 5 to 1, end).
     const sounds = soundsOfBlock(version, 'long').filter((one) => one.sound !== 'knock')

@@ -7,9 +7,9 @@
 import FFT from 'fft.js'
 
 const SIZE = 512
-const HOP = 48
+const HOP = 96
 /** Frames on either side of the moving median. */
-const AROUND = 40
+const AROUND = 20
 /** A peak is the highest of its neighbourhood: seconds. */
 const APART_SECONDS = 0.05
 const LEAST_RISE = 12
@@ -38,11 +38,12 @@ export function onsetsOf(samples: Float64Array, rate: number): number[] {
   }
   const apart = Math.round((APART_SECONDS * rate) / HOP)
   return flux.flatMap((rise, index) => {
-    const near = flux.slice(Math.max(0, index - AROUND), index + AROUND + 1).sort((a, b) => a - b)
-    const median = near[near.length >> 1] ?? 0
     const around = flux.slice(Math.max(0, index - apart), index + apart + 1)
     const isPeak = rise === Math.max(...around) && flux.lastIndexOf(rise, index + apart) === index
-    if (!isPeak || rise < median * 2 + LEAST_RISE) return []
+    if (!isPeak) return []
+    const near = flux.slice(Math.max(0, index - AROUND), index + AROUND + 1).sort((a, b) => a - b)
+    const median = near[near.length >> 1] ?? 0
+    if (rise < median * 2 + LEAST_RISE) return []
     // A frame hears what comes in at its end, where its window is still low: about a third before it.
     return [(-SIZE + index * HOP + SIZE * 0.7) / rate]
   })
