@@ -8,6 +8,7 @@ import {
   workNumber,
 } from '@/server/contract/block-text'
 import type { ForecastDto } from '@/server/contract/paces'
+import type { FittedStation } from '@/server/engine/fit/fit'
 import type { AnyStation, Block } from '@/server/engine/spec/schema'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 
@@ -15,9 +16,12 @@ import type { PublishedVersion } from '@/server/engine/spec/version'
 export function BlockList({
   version,
   forecasts,
+  fitted,
 }: {
   version: PublishedVersion
   forecasts: readonly ForecastDto[]
+  /** The reader's own; empty for somebody who only reads. */
+  fitted: readonly FittedStation[]
 }) {
   return (
     <ol>
@@ -29,6 +33,7 @@ export function BlockList({
             block={block}
             stations={block.format.stations}
             forecast={forecasts.find((one) => one.block === block.id)}
+            fitted={fitted.filter((one) => one.block === block.id)}
           />
         ),
       )}
@@ -41,9 +46,10 @@ interface BlockRowProps {
   block: Block
   stations: readonly AnyStation[]
   forecast: ForecastDto | undefined
+  fitted: readonly FittedStation[]
 }
 
-function BlockRow({ version, block, stations, forecast }: BlockRowProps) {
+function BlockRow({ version, block, stations, forecast, fitted }: BlockRowProps) {
   const number = workNumber(version.spec.blocks, block)
   return (
     <li className="grid gap-x-8 gap-y-4 border-t-4 border-line pt-3 pb-7 sm:grid-cols-[11rem_1fr]">
@@ -64,17 +70,31 @@ function BlockRow({ version, block, stations, forecast }: BlockRowProps) {
       </div>
       <ul className="space-y-4">
         {stations.map((station, index) => (
-          <Station key={index} version={version} station={station} />
+          <Station
+            key={index}
+            version={version}
+            station={station}
+            fitted={fitted.find((one) => one.station === index)}
+          />
         ))}
       </ul>
     </li>
   )
 }
 
-function Station({ version, station }: { version: PublishedVersion; station: AnyStation }) {
+function Station({
+  version,
+  station,
+  fitted,
+}: {
+  version: PublishedVersion
+  station: AnyStation
+  fitted: FittedStation | undefined
+}) {
   const { name, easier, harder } = stationNames(version, station)
-  const figure =
-    version.movements.find((one) => one.slug === station.movement)?.figure ?? station.movement
+  const movement = version.movements.find((one) => one.slug === station.movement)
+  const option = movement?.options.find((one) => one.option === fitted?.option)
+  const figure = option?.figure ?? movement?.figure ?? station.movement
   return (
     <li className="grid grid-cols-[5.5rem_1fr] gap-x-4">
       <div className="flex h-17 items-end justify-center border-b-4 border-fill">
@@ -85,6 +105,18 @@ function Station({ version, station }: { version: PublishedVersion; station: Any
           <strong className="block">{name}</strong>
           <span className="text-text-quiet">{stationText(station)}</span>
         </p>
+        {fitted && (fitted.why !== null || fitted.conflicts.length > 0) ? (
+          <div className="space-y-1 xl:col-span-2">
+            {fitted.why ? (
+              <p className="border-l-6 border-rest pl-2.5 leading-snug">{fitted.why}</p>
+            ) : null}
+            {fitted.conflicts.map((conflict) => (
+              <p key={conflict} className="border-l-6 border-stop pl-2.5 leading-snug">
+                {conflict}
+              </p>
+            ))}
+          </div>
+        ) : null}
         <dl className="grid gap-x-6 gap-y-1 lg:grid-cols-[6fr_5fr]">
           <Ways key="easier" digit="1" word="Easier" names={easier} />
           <Ways key="harder" digit="3" word="Harder" names={harder} />

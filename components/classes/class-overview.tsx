@@ -6,6 +6,7 @@ import type { ScheduledClassSummary } from '@/server/contract/classes'
 import { dayName, lengthText, windowText, type DateStyle } from '@/server/contract/format'
 import type { ForecastDto } from '@/server/contract/paces'
 import { paths } from '@/server/contract/paths'
+import type { FittedStation } from '@/server/engine/fit/fit'
 import type { PublishedVersion } from '@/server/engine/spec/version'
 import { BlockList } from './block-list'
 import { ClassPicture } from './class-picture'
@@ -14,6 +15,8 @@ interface ClassOverviewProps {
   scheduledClass: ScheduledClassSummary
   version: PublishedVersion
   forecasts: readonly ForecastDto[]
+  /** The reader's own; empty for somebody who only reads. */
+  fitted: readonly FittedStation[]
   timeZone: string
   dateStyle: DateStyle
   now: Date
@@ -31,6 +34,7 @@ export function ClassOverview({
   scheduledClass,
   version,
   forecasts,
+  fitted,
   timeZone,
   dateStyle,
   now,
@@ -77,7 +81,7 @@ export function ClassOverview({
           ) : null}
         </div>
         <section aria-label="Blocks" className="min-w-0">
-          <BlockList version={version} forecasts={forecasts} />
+          <BlockList version={version} forecasts={forecasts} fitted={fitted} />
         </section>
       </div>
     </article>

@@ -8,7 +8,7 @@ import { TODAY_QUESTION } from '@/server/engine/fit/screening'
 import { compile } from '@/server/engine/timeline/compile'
 import type { Counting } from '@/server/engine/tally/events'
 import { ActionButton } from './button'
-import { holdOn } from './held'
+import { fittedOf, holdOn } from './held'
 import { HealthState, startBar } from './health-state'
 import { KitList } from './kit-list'
 import { reasonsText } from './option-column'
@@ -258,6 +258,8 @@ function OptionRow({ view }: { view: StationView }) {
   const choose = usePlayer((state) => state.chooseStartOption)
   const hold = holdOn(data, view)
   const option = view.option
+  const fitted = fittedOf(data, view)
+  const isFitted = fitted !== null && fitted.option === option?.option
   const reasons = option ? reasonsText(option) : ''
   return (
     <li className="grid grid-cols-[minmax(0,1fr)_auto] items-center gap-x-4 gap-y-0.5 py-1.5 sm:grid-cols-[minmax(0,1fr)_auto_minmax(0,1.15fr)]">
@@ -297,7 +299,14 @@ function OptionRow({ view }: { view: StationView }) {
             Easier since ‘this hurts’ ({HURT_PLACE_TEXT[hold.place].toLowerCase()}). It stays until
             you and your coach have cleared it.
           </span>
+        ) : isFitted && fitted.why ? (
+          <span className="mt-1 block border-l-6 border-rest pl-2 text-[0.9em]">{fitted.why}</span>
         ) : null}
+        {fitted?.conflicts.map((conflict) => (
+          <span key={conflict} className="mt-1 block border-l-6 border-stop pl-2 text-[0.9em]">
+            {conflict}
+          </span>
+        ))}
       </span>
     </li>
   )

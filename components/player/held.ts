@@ -1,15 +1,22 @@
 /** Stations that stay easier: after 'this hurts', until member and coach have cleared it. */
 import type { HurtHold, PlayerData } from '@/server/contract/classes'
 import { easierFor, HURT_PLACE_TEXT } from '@/server/engine/fit/hurt'
+import type { FittedStation } from '@/server/engine/fit/fit'
 import type { ClassEvent } from '@/server/engine/tally/events'
 import type { StationView } from './scene'
 
 const isOpenHold = (hold: HurtHold) => hold.memberClearedAt === null || hold.coachClearedAt === null
 
+/** What the class was fitted with at this station. */
+export function fittedOf(data: PlayerData, view: StationView): FittedStation | null {
+  return data.fitted.find((one) => one.block === view.block && one.station === view.index) ?? null
+}
+
 /** The hold from an earlier class that this station is under, or null. */
 export function holdOn(data: PlayerData, view: StationView): HurtHold | null {
   const { movement } = view
-  if (!movement) return null
+  // A coach's own rule stands over a hold.
+  if (!movement || fittedOf(data, view)?.from === 'coach') return null
   return (
     data.holds.find(
       (hold) =>

@@ -4,7 +4,6 @@
  */
 import { createStore, type StoreApi } from 'zustand'
 import type { PlayerData } from '@/server/contract/classes'
-import { optionsForHolds } from '@/server/engine/fit/hurt'
 import { AS_PLANNED } from '@/server/engine/spec/names'
 import type { ClassEvent } from '@/server/engine/tally/events'
 import { fold } from '@/server/engine/tally/fold'
@@ -109,7 +108,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
     position: null,
     tally: null,
     events: [],
-    options: heldOptions(data),
+    options: fittedOptions(data),
     cueLine: [],
     due: null,
     notice: null,
@@ -598,28 +597,30 @@ function soonOr(work: Promise<void>, ms: number): Promise<void> {
   })
 }
 
-/** Options that earlier 'this hurts' hold, by station. */
-function heldOptions(data: PlayerData): Record<StationKey, string> {
-  const held = data.holds
-    .filter((hold) => hold.memberClearedAt === null || hold.coachClearedAt === null)
-    .map((hold) => hold.place)
+type StartOptions = Extract<Command, { type: 'start' }>['options']
+
+/** Options that the class is fitted with, by station; those as planned are not among them. */
+function fittedOptions(data: PlayerData): Record<StationKey, string> {
   return Object.fromEntries(
-    optionsForHolds(data.version, held).map((one) => [`${one.block}/${one.station}`, one.option]),
+    data.fitted
+      .filter((one) => one.option !== AS_PLANNED)
+      .map((one) => [`${one.block}/${one.station}`, one.option]),
   )
 }
 
-type StartOptions = Extract<Command, { type: 'start' }>['options']
-
 function startOptions(data: PlayerData, chosen: Record<StationKey, string>): StartOptions {
-  const held = heldOptions(data)
+  const fitted = new Map(data.fitted.map((one) => [`${one.block}/${one.station}`, one]))
   return data.version.spec.blocks.flatMap((block) =>
     block.format.type === 'rest'
       ? []
       : block.format.stations.map((_, station) => {
           const key: StationKey = `${block.id}/${station}`
           const option = chosen[key] ?? AS_PLANNED
-          const from =
-            held[key] === option ? 'fitted' : chosen[key] === undefined ? 'coach' : 'chosen'
+          const own = fitted.get(key)
+          // What nobody touched is the coach's, as planned or by their rule.
+          const isCoachs = own === undefined || own.from === 'planned' || own.from === 'coach'
+          const isUntouched = option === (own?.option ?? AS_PLANNED)
+          const from = !isUntouched ? 'chosen' : isCoachs ? 'coach' : 'fitted'
           return { block: block.id, station, option, from } as const
         }),
   )

@@ -2,6 +2,7 @@
 import type { BlockKind } from '../engine/spec/schema'
 import type { PublishedVersion } from '../engine/spec/version'
 import type { AttemptState, AttemptTally } from '../engine/tally/types'
+import type { FittedStation } from '../engine/fit/fit'
 import type { HealthAnswers } from '../engine/fit/screening'
 import type { ClassEvent, HurtPlace } from '../engine/tally/events'
 
@@ -56,6 +57,8 @@ export interface PlayerData {
   kit: Record<string, number>
   health: HealthStanding
   holds: HurtHold[]
+  /** The option to start with at every station, and why. */
+  fitted: FittedStation[]
   emergencyNumber: string | null
   /** Latest attempt not yet finished or stopped, with its events, to go on from another device. */
   openAttempt: { attemptId: string; events: ClassEvent[] } | null

@@ -13,6 +13,7 @@ import { fold } from '@/server/engine/tally/fold'
 import type { AttemptTally } from '@/server/engine/tally/types'
 import { eventsOf, openAttemptOf } from './attempts'
 import { getScheduledClass } from './classes'
+import { fitOwn } from './fit'
 import { getHealth, openHolds } from './health'
 
 /**
@@ -49,6 +50,7 @@ export const getPlayerData = timed(
       kit: own?.kit ?? {},
       health: await getHealth(viewer, { now: params.now }, db),
       holds: await openHolds(db, viewer.membershipId),
+      fitted: await fitOwn(viewer, { version: older?.content ?? version }, db),
       emergencyNumber: own?.emergencyNumber ?? null,
       openAttempt: open ? { attemptId: open.attemptId, events: open.events } : null,
       lastTally: await lastTally(db, viewer, scheduledClass.versionId),

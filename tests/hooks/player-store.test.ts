@@ -27,6 +27,42 @@ const typesOf = (events: readonly ClassEvent[]) => events.map((event) => event.t
 const serverEvents = (bench: PlayerBench) =>
   [...bench.server.events.values()].map((one) => one.event).sort((a, b) => a.seq - b.seq)
 
+describe('a class that is fitted to its member', () => {
+  it('starts on the fitted options and tells of each whose choice it is', async () => {
+    const bench = playerBench({
+      fitted: [
+        {
+          block: 'row-and-lunge',
+          station: 0,
+          option: 'hand-on-a-chair',
+          from: 'note',
+          why: 'Hand on a chair, since your lower back is on your notes.',
+          conflicts: [],
+        },
+        {
+          block: 'warm-up',
+          station: 1,
+          option: 'hands-on-a-table',
+          from: 'coach',
+          why: null,
+          conflicts: [],
+        },
+      ],
+    })
+    const tab = await bench.openTab()
+    expect(tab.state().options).toMatchObject({ 'row-and-lunge/0': 'hand-on-a-chair' })
+    tab.state().chooseStartOption('row-and-lunge/1', 'as-planned')
+    tab.state().start(null)
+    await bench.settle()
+    const started = tab.state().events.find((event) => event.type === 'started')
+    const from = (block: string, station: number) =>
+      started?.options.find((one) => one.block === block && one.station === station)
+    expect(from('row-and-lunge', 0)).toMatchObject({ option: 'hand-on-a-chair', from: 'fitted' })
+    expect(from('warm-up', 1)).toMatchObject({ option: 'hands-on-a-table', from: 'coach' })
+    expect(from('row-and-lunge', 1)).toMatchObject({ option: 'as-planned', from: 'coach' })
+  })
+})
+
 describe('a class played', () => {
   it('is recorded by stamped events whose seq goes up by one, each sent exactly once', async () => {
     const bench = playerBench()

@@ -273,6 +273,16 @@ function formFor(action: string): FormData {
     ),
     'health/clearHurtHold': { holdId, as: 'coach' },
     'kit/saveOwnKit': { dumbbell: '2' },
+    'library/archiveMovement': { slug },
+    'library/bringBackMovement': { slug },
+    // The built-in itself is what stands there: nothing is removed, by whoever may ask.
+    'library/backToBuiltIn': { slug, basedOn: 'seen before' },
+    'fit/saveFit': { note: 'knee' },
+    'fit/saveOptionRule': {
+      membershipId: people.get('member')?.membershipId ?? '',
+      movement: 'goblet-squat',
+      option: 'as-planned',
+    },
     'planned-classes/importCues': {
       classId: gym.classId,
       basedOn: gym.versionId,

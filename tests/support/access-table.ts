@@ -52,6 +52,10 @@ export const PAGES: Record<string, Row> = {
   ),
   '/planner': row('sign-in', '404', '404', 'ok', 'ok', '404', 'sign-in'),
   '/planner/[classId]': row('sign-in', '404', '404', 'ok', '404', '404', 'sign-in'),
+  '/library': row('sign-in', '404', '404', 'ok', 'ok', '404', 'sign-in'),
+  '/library/new': row('sign-in', '404', '404', 'ok', 'ok', '404', 'sign-in'),
+  '/library/[slug]': row('sign-in', '404', '404', 'ok', '404', '404', 'sign-in'),
+  '/library/[slug]/edit': row('sign-in', '404', '404', 'ok', '404', '404', 'sign-in'),
 }
 
 export const HANDLERS: Record<string, Row> = {
@@ -125,6 +129,46 @@ export const ACTIONS: Record<string, Row> = {
     'refused',
   ),
   'planned-classes/importCues': row(
+    'refused',
+    'refused',
+    'refused',
+    'ok',
+    'refused',
+    'refused',
+    'refused',
+  ),
+  'fit/saveFit': row('refused', 'ok', 'ok', 'ok', 'ok', 'ok', 'refused'),
+  'fit/saveOptionRule': row('refused', 'refused', 'refused', 'ok', 'refused', 'refused', 'refused'),
+  // First of the library's: later the gym has a copy of its own.
+  'library/backToBuiltIn': row(
+    'refused',
+    'refused',
+    'refused',
+    'ok',
+    'refused',
+    'refused',
+    'refused',
+  ),
+  // A movement of the first gym; who saves it is led to its page.
+  'library/saveMovement': row(
+    'refused',
+    'refused',
+    'refused',
+    'on',
+    'refused',
+    'refused',
+    'refused',
+  ),
+  'library/archiveMovement': row(
+    'refused',
+    'refused',
+    'refused',
+    'ok',
+    'refused',
+    'refused',
+    'refused',
+  ),
+  'library/bringBackMovement': row(
     'refused',
     'refused',
     'refused',

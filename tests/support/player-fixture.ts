@@ -1,5 +1,6 @@
 /** A class with every format and what a member brings to it, for the player's own tests. */
 import type { PlayerData } from '@/server/contract/classes'
+import { fit } from '@/server/engine/fit/fit'
 import type { Movement, MovementOption } from '@/server/engine/spec/movement'
 import type { SessionSpec } from '@/server/engine/spec/schema'
 
@@ -214,6 +215,7 @@ export const FIXTURE_SPEC: SessionSpec = {
 }
 
 export function playerFixture(change: Partial<PlayerData> = {}): PlayerData {
+  const version = { spec: FIXTURE_SPEC, movements: FIXTURE_MOVEMENTS }
   return {
     scheduledClass: {
       scheduledClassId: '01920000-0000-7000-8000-000000000001',
@@ -231,7 +233,7 @@ export function playerFixture(change: Partial<PlayerData> = {}): PlayerData {
       myAttempts: [],
     },
     versionId: '01920000-0000-7000-8000-000000000002',
-    version: { spec: FIXTURE_SPEC, movements: FIXTURE_MOVEMENTS },
+    version,
     membershipId: '01920000-0000-7000-8000-000000000003',
     memberName: 'Agnes Thorsby',
     kit: { dumbbell: 2, mat: 1 },
@@ -245,6 +247,15 @@ export function playerFixture(change: Partial<PlayerData> = {}): PlayerData {
       consentMissing: false,
     },
     holds: [],
+    fitted: fit(change.version ?? version, {
+      notes: [],
+      holds: (change.holds ?? [])
+        .filter((hold) => hold.memberClearedAt === null || hold.coachClearedAt === null)
+        .map((hold) => hold.place),
+      wantsMore: false,
+      kit: null,
+      rules: [],
+    }),
     emergencyNumber: '112',
     openAttempt: null,
     lastTally: null,

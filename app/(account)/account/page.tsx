@@ -1,5 +1,6 @@
 import type { Metadata } from 'next'
 import type { ReactNode } from 'react'
+import { FitForm } from '@/components/account/fit-form'
 import { KitForm } from '@/components/account/kit-form'
 import { PasswordForm } from '@/components/account/password-form'
 import { Holds } from '@/components/attempt/holds'
@@ -14,6 +15,7 @@ import { plural } from '@/server/contract/format'
 import { paths } from '@/server/contract/paths'
 import type { Viewer } from '@/server/contract/viewer'
 import { defaultDb } from '@/server/data/db'
+import { getOwnFit } from '@/server/data/fit'
 import { getHealth, listOwnHolds } from '@/server/data/health'
 import { countSessions, getKit } from '@/server/data/people'
 import { readerDateStyle } from '@/server/http/reader'
@@ -41,6 +43,13 @@ export default async function AccountPage() {
                     What you have at home. Classes show what is missing.
                   </p>
                   <KitForm kit={await getKit(viewer, {}, db)} />
+                </Part>
+                <Part title="My body" id="body">
+                  <p className="py-3 text-text-quiet">
+                    Classes start you on the option that spares it, and say why. You can always
+                    choose another. Your coach sees these notes; they are no medical advice.
+                  </p>
+                  <FitForm fit={await getOwnFit(viewer, {}, db)} />
                 </Part>
                 <Part title="Health">
                   <div className="space-y-6 py-3">

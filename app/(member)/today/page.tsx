@@ -17,6 +17,7 @@ import { paths } from '@/server/contract/paths'
 import type { Viewer } from '@/server/contract/viewer'
 import { getScheduledClass, listToday, nearestClasses } from '@/server/data/classes'
 import { defaultDb } from '@/server/data/db'
+import { fitOwn } from '@/server/data/fit'
 import { forecastsOf, getLearntPaces } from '@/server/data/paces'
 import { getHealth } from '@/server/data/health'
 import { getKit } from '@/server/data/people'
@@ -76,6 +77,7 @@ async function TodaysClass({ viewer, scheduledClass, now }: TodaysClassProps) {
       scheduledClass={scheduledClass}
       version={version}
       forecasts={forecastsOf(version, await getLearntPaces(viewer, { now }, db))}
+      fitted={await fitOwn(viewer, { version }, db)}
       timeZone={timeZone}
       dateStyle={dateStyle}
       now={now}

@@ -8,6 +8,7 @@ import { orNotFound, requireViewer } from '@/server/auth/viewer'
 import { paths } from '@/server/contract/paths'
 import { getScheduledClass } from '@/server/data/classes'
 import { defaultDb } from '@/server/data/db'
+import { fitOwn } from '@/server/data/fit'
 import { forecastsOf, getLearntPaces } from '@/server/data/paces'
 import { getHealth } from '@/server/data/health'
 import { getKit } from '@/server/data/people'
@@ -42,6 +43,7 @@ export default async function ClassPage({ params }: PageProps) {
         scheduledClass={scheduledClass}
         version={version}
         forecasts={forecastsOf(version, await getLearntPaces(viewer, { now }, db))}
+        fitted={canPlay ? await fitOwn(viewer, { version }, db) : []}
         timeZone={timeZone}
         dateStyle={dateStyle}
         now={now}

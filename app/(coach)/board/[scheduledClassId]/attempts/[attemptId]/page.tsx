@@ -4,6 +4,7 @@ import { notFound } from 'next/navigation'
 import { AttemptFacts } from '@/components/attempt/attempt-facts'
 import { EventList } from '@/components/attempt/event-list'
 import { Holds } from '@/components/attempt/holds'
+import { OptionRules } from '@/components/attempt/option-rules'
 import { TallyBlocks } from '@/components/attempt/tally-blocks'
 import { PageFrame } from '@/components/site/page-frame'
 import { buttonClass } from '@/components/ui/button'
@@ -12,6 +13,7 @@ import { dayName } from '@/server/contract/format'
 import { paths } from '@/server/contract/paths'
 import { getAttempt } from '@/server/data/attempts'
 import { defaultDb } from '@/server/data/db'
+import { getMemberFit } from '@/server/data/fit'
 
 export const metadata: Metadata = { title: 'Attempt' }
 
@@ -43,6 +45,12 @@ export default async function BoardAttemptPage({
           <h2 className="mb-4 text-2xl">Block by block</h2>
           <TallyBlocks version={attempt.version} tally={attempt.tally} />
         </section>
+        <OptionRules
+          membershipId={attempt.membershipId}
+          memberName={attempt.memberName}
+          fit={await getMemberFit(viewer, { membershipId: attempt.membershipId }, defaultDb())}
+          movements={attempt.version.movements}
+        />
         <section>
           <h2 className="mb-2 text-2xl">In order</h2>
           <EventList attempt={attempt} timeZone={timeZone} />
