@@ -21,6 +21,7 @@ export function SiteHeader({ viewer }: { viewer: Viewer }) {
           { href: paths.board(), text: 'Board', not: [paths.boardAll()] },
           { href: paths.boardAll(), text: 'All boards' },
           { href: paths.planner(), text: 'Planner' },
+          { href: paths.library(), text: 'Library' },
         ]
       : []),
     ...(viewer.roles.includes('owner') ? [{ href: paths.gym(), text: 'Gym' }] : []),

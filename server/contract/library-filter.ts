@@ -22,7 +22,8 @@ export interface LibraryFilter {
   spares: boolean
   /** An item that it takes; `NO_KIT`: it takes none. */
   kit: string | null
-  show: Shown
+  /** `every`, which no address asks for: archived or not. */
+  show: Shown | 'every'
 }
 
 export const WHOLE_LIBRARY: LibraryFilter = {
@@ -38,6 +39,8 @@ export const WHOLE_LIBRARY: LibraryFilter = {
 
 const among = <const T extends string>(list: readonly T[], value: string | null): T | null =>
   list.find((one) => one === value) ?? null
+
+export const EVERY_MOVEMENT: LibraryFilter = { ...WHOLE_LIBRARY, show: 'every' }
 
 /** Anything unreadable in an address is as if it were not there. */
 export function parseLibraryFilter(params: URLSearchParams): LibraryFilter {
@@ -89,7 +92,7 @@ export function filterLibrary(rows: readonly LibraryRow[], filter: LibraryFilter
   const words = folded(filter.q).split(/\s+/).filter(Boolean)
   return rows.filter(
     (row) =>
-      row.archived === (filter.show === 'archived') &&
+      (filter.show === 'every' || row.archived === (filter.show === 'archived')) &&
       (filter.show !== 'own' || row.origin !== 'built-in') &&
       (filter.pattern === null || row.pattern === filter.pattern) &&
       (filter.position === null || row.position === filter.position) &&

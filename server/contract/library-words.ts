@@ -1,7 +1,7 @@
 /** The library's lists in the words of the trade. Apart from what parses, so that a page carries no parser. */
 import type { Impact, Joint, LibraryRow, Pattern, Position } from './library'
 import type { Level, Muscle, Reason } from '../engine/spec/movement'
-import type { Sides, Tempo } from '../engine/spec/schema'
+import type { Reps, Sides, Tempo } from '../engine/spec/schema'
 import { kitText } from './kit-text'
 
 /** Kit that most homes and gyms have, in the order in which it is asked. A coach may name more. */
@@ -73,4 +73,14 @@ export function tempoText(timing: {
     return parts.join(', ')
   }
   return timing.secondsPerRep === undefined ? null : `${timing.secondsPerRep} s a rep`
+}
+
+export const REPS_HELP = 'Such as 10; or 12, 9, 6; or from 4 by 2 to 12.'
+
+/** '10'; '12, 9, 6'; 'from 4 by 2 to 12, then hold'. What the form reads again. */
+export function writeReps(reps: Reps): string {
+  if (typeof reps === 'number') return String(reps)
+  const then = reps.then === undefined ? '' : `, then ${reps.then}`
+  if ('list' in reps) return reps.list.join(', ') + (reps.list.length === 1 && !then ? ',' : then)
+  return `from ${reps.from} by ${reps.step}${reps.to === undefined ? '' : ` to ${reps.to}`}${then}`
 }

@@ -9,8 +9,7 @@ import {
   type POSITIONS,
 } from '../engine/spec/names'
 import { parseSpecOrVersion } from '../engine/spec/problems'
-import type { Reps } from '../engine/spec/schema'
-import { KIT_ITEMS } from './library-words'
+import { KIT_ITEMS, REPS_HELP } from './library-words'
 import { storable } from './text'
 
 export type Pattern = (typeof PATTERNS)[number]
@@ -87,14 +86,6 @@ export const backToBuiltInInput = movementNameInput.extend({ basedOn: z.string()
 
 const THEN = /,\s*then\s+(hold|repeat|done)\s*$/i
 
-/** '10'; '12, 9, 6'; 'from 4 by 2 to 12, then hold'. What `readReps` reads. */
-export function writeReps(reps: Reps): string {
-  if (typeof reps === 'number') return String(reps)
-  const then = reps.then === undefined ? '' : `, then ${reps.then}`
-  if ('list' in reps) return reps.list.join(', ') + (reps.list.length === 1 && !then ? ',' : then)
-  return `from ${reps.from} by ${reps.step}${reps.to === undefined ? '' : ` to ${reps.to}`}${then}`
-}
-
 /** The reps that a text stands for; whatever cannot be read comes back as something that no schema takes. */
 function readReps(typed: string): unknown {
   const text = typed.trim()
@@ -127,8 +118,6 @@ function readReps(typed: string): unknown {
 
 // ---------------------------------------------------------------------------------------------
 // The form
-
-export const REPS_HELP = 'Such as 10; or 12, 9, 6; or from 4 by 2 to 12.'
 
 const textOf = (form: FormData, name: string): string => {
   const value = form.get(name)

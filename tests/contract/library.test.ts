@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { freeSlug, readMovementForm, writeReps, type LibraryRow } from '@/server/contract/library'
+import { freeSlug, readMovementForm, type LibraryRow } from '@/server/contract/library'
 import {
   filterLibrary,
   libraryQuery,
@@ -7,6 +7,7 @@ import {
   WHOLE_LIBRARY,
   type LibraryFilter,
 } from '@/server/contract/library-filter'
+import { writeReps } from '@/server/contract/library-words'
 import type { Reps } from '@/server/engine/spec/schema'
 import { movementForm } from '../support/library-form'
 
