@@ -20,6 +20,7 @@ import { healthAnswers } from '../schema/health-answers'
 import { hurtHolds } from '../schema/hurt-holds'
 import { memberships } from '../schema/memberships'
 import { movements } from '../schema/movements'
+import { BODY_NOTES, type BodyNote } from '@/server/contract/fit'
 import { people } from '../schema/people'
 import { scheduledClasses } from '../schema/scheduled-classes'
 import { demoClasses, type DemoClass } from './classes'
@@ -131,6 +132,8 @@ export async function seedDemoGym(
         roles: ['member'],
         group: member.group,
         kit: member.kit,
+        bodyNotes: notesOf(member),
+        wantsMore: member.wantsMore ?? false,
         createdAt: joined,
       })
       await insertHealth(tx, member, membershipId, now, random)
@@ -390,4 +393,10 @@ function chunks<T>(items: readonly T[], size: number): T[][] {
   const parts: T[][] = []
   for (let from = 0; from < items.length; from += size) parts.push(items.slice(from, from + size))
   return parts
+}
+
+/** What a member would note of their own body; what comes with a pregnancy is a word with the coach. */
+function notesOf({ takes, yes }: DemoMember): BodyNote[] {
+  if (yes?.includes('pregnant-or-recent-birth')) return []
+  return BODY_NOTES.filter((note) => takes.includes(note))
 }
