@@ -1,6 +1,6 @@
 /** A class fitted to a member: for every station the option to start with, and why, in a sentence. */
 import type { Movement, MovementOption, Reason } from '../spec/movement'
-import { AS_PLANNED } from '../spec/names'
+import { AS_PLANNED, FLOOR_POSITIONS } from '../spec/names'
 import { optionsOf } from '../spec/options'
 import type { AnyStation } from '../spec/schema'
 import type { PublishedVersion } from '../spec/version'
@@ -48,20 +48,13 @@ const NOTE_WORDS: Readonly<Record<Reason, string>> = {
   'wants-more': 'more',
 }
 
-const FLOOR: readonly Movement['position'][] = [
-  'kneeling',
-  'hands-and-feet',
-  'face-up',
-  'face-down',
-]
-
 /** Whether a note has to do with a movement at all: a sore wrist says nothing about a march. */
 export function concerns(note: Reason, movement: Movement): boolean {
   switch (note) {
     case 'no-jumping':
       return movement.impact === 'jump'
     case 'cannot-get-down':
-      return FLOOR.includes(movement.position)
+      return FLOOR_POSITIONS.includes(movement.position)
     case 'cannot-kneel':
       return movement.position === 'kneeling'
     case 'balance':

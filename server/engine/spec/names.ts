@@ -21,6 +21,13 @@ export const POSITIONS = [
   'face-up',
   'face-down',
 ] as const
+/** From which one has to get up. `seated` may be on a chair and is not among them. */
+export const FLOOR_POSITIONS: readonly (typeof POSITIONS)[number][] = [
+  'kneeling',
+  'hands-and-feet',
+  'face-up',
+  'face-down',
+]
 export const IMPACTS = ['none', 'low', 'jump'] as const
 export const JOINTS = [
   'knee',
