@@ -1,19 +1,25 @@
 import { ClassLane } from './class-lane'
 import { Captions } from './captions'
 import { Cues } from './cues'
+import { Load } from './load'
 import { Paces } from './paces'
 import { Part, PageTitle } from '@/components/ui/heading'
 import { forecastBasisText, forecastText, formatText } from '@/server/contract/block-text'
 import { dateOf, lengthText, plural, type DateStyle } from '@/server/contract/format'
+import type { StationSwaps, WeeksLoad } from '@/server/contract/load'
 import type { ForecastDto, LearntPacesDto } from '@/server/contract/paces'
 import type { PlannedClass } from '@/server/contract/planned-classes'
+import { classLoad } from '@/server/engine/load/class-load'
 import { advise } from '@/server/engine/spec/advice'
-import type { SessionSpec } from '@/server/engine/spec/schema'
+import type { Block, SessionSpec } from '@/server/engine/spec/schema'
+import type { PublishedVersion } from '@/server/engine/spec/version'
 import { realLengthMs } from '@/server/engine/timeline/compile'
 
 interface PlannedClassPageProps {
   planned: PlannedClass
   learnt: LearntPacesDto
+  weeks: WeeksLoad
+  swaps: readonly StationSwaps[]
   forecasts: readonly ForecastDto[]
   timeZone: string
   dateStyle: DateStyle
@@ -23,6 +29,8 @@ interface PlannedClassPageProps {
 export function PlannedClassPage({
   planned,
   learnt,
+  weeks,
+  swaps,
   forecasts,
   timeZone,
   dateStyle,
@@ -64,6 +72,7 @@ export function PlannedClassPage({
                     <p className="leading-snug">
                       <strong className="font-display text-lg">{block.title}</strong>
                       <span className="block text-text-quiet">{formatText(block)}</span>
+                      <Swaps version={version} block={block} swaps={swaps} />
                     </p>
                     {forecast ? (
                       <p className="leading-snug sm:text-right">
@@ -97,6 +106,9 @@ export function PlannedClassPage({
               </ul>
             )}
           </Part>
+          <Part title="What it asks of a body">
+            <Load spec={spec} load={classLoad(version)} weeks={weeks} />
+          </Part>
           <Part title="Captions" id="captions">
             <Captions planned={planned} />
           </Part>
@@ -106,6 +118,32 @@ export function PlannedClassPage({
         </div>
       </div>
     </article>
+  )
+}
+
+/** How many members a station of the block starts on another option. */
+function Swaps({
+  version,
+  block,
+  swaps,
+}: {
+  version: PublishedVersion
+  block: Block
+  swaps: readonly StationSwaps[]
+}) {
+  const own = swaps.filter((one) => one.block === block.id && one.members > 0)
+  if (own.length === 0 || block.format.type === 'rest') return null
+  const { stations } = block.format
+  return (
+    <span className="block text-[0.9em] text-text-quiet">
+      {own
+        .map(({ station, members, of }) => {
+          const slug = stations[station]?.movement
+          const name = version.movements.find((one) => one.slug === slug)?.name ?? ''
+          return `${name}: ${members} of ${of} start on another option`
+        })
+        .join(' · ')}
+    </span>
   )
 }
 

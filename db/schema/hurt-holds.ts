@@ -1,4 +1,5 @@
 import { index, pgTable, text } from 'drizzle-orm/pg-core'
+import type { HurtPlace } from '@/server/engine/tally/events'
 import { createdAt, id, instant } from './columns'
 import { attempts } from './attempts'
 import { memberships } from './memberships'
@@ -13,7 +14,7 @@ export const hurtHolds = pgTable(
       .notNull()
       .references(() => memberships.id, { onDelete: 'cascade' }),
     attemptId: text('attempt_id').references(() => attempts.id, { onDelete: 'set null' }),
-    place: text('place').notNull(),
+    place: text('place').$type<HurtPlace>().notNull(),
     memberClearedAt: instant('member_cleared_at'),
     coachClearedAt: instant('coach_cleared_at'),
     createdAt: createdAt(),

@@ -11,8 +11,9 @@ import { people } from '@/db/schema/people'
 import { AppError } from '@/server/contract/errors'
 import { BODY_NOTES, type BodyNote, type FitProfile } from '@/server/contract/fit'
 import type { Viewer } from '@/server/contract/viewer'
-import { fit, type FittedStation } from '@/server/engine/fit/fit'
+import { fit, type FittedStation, type FittedTo } from '@/server/engine/fit/fit'
 import type { PublishedVersion } from '@/server/engine/spec/version'
+import type { HurtPlace } from '@/server/engine/tally/events'
 import { openHolds } from './health'
 
 /** The viewer's own. */
@@ -49,18 +50,30 @@ export const fitOwn = timed(
   ): Promise<FittedStation[]> => {
     const profile = await getOwnFit(viewer, {}, db)
     const holds = await openHolds(db, viewer.membershipId)
-    return fit(params.version, {
-      notes: profile.bodyNotes,
-      holds: holds
-        .filter((hold) => hold.memberClearedAt === null || hold.coachClearedAt === null)
-        .map((hold) => hold.place),
-      wantsMore: profile.wantsMore,
-      // Who has never said what they own is not taken for somebody who owns nothing.
-      kit: Object.keys(profile.kit).length > 0 ? profile.kit : null,
-      rules: profile.rules,
-    })
+    return fit(params.version, fittedTo(profile, holds))
   },
 )
+
+/** What `fit` takes, of a profile and all places that ever hurt. */
+export function fittedTo(
+  profile: FitProfile,
+  holds: readonly {
+    place: HurtPlace
+    memberClearedAt: Date | string | null
+    coachClearedAt: Date | string | null
+  }[],
+): FittedTo {
+  return {
+    notes: profile.bodyNotes,
+    holds: holds
+      .filter((hold) => hold.memberClearedAt === null || hold.coachClearedAt === null)
+      .map((hold) => hold.place),
+    wantsMore: profile.wantsMore,
+    // Who has never said what they own is not taken for somebody who owns nothing.
+    kit: Object.keys(profile.kit).length > 0 ? profile.kit : null,
+    rules: profile.rules,
+  }
+}
 
 /** Of members of one gym, by membership. Whoever calls has checked who asks. */
 export async function profilesOf(

@@ -14,7 +14,6 @@ import type { HealthStanding, HurtHold } from '@/server/contract/classes'
 import { AppError } from '@/server/contract/errors'
 import type { Viewer } from '@/server/contract/viewer'
 import { standing, type HealthAnswers, type StandingInput } from '@/server/engine/fit/screening'
-import type { HurtPlace } from '@/server/engine/tally/events'
 
 /** The latest answers of members, as the rules take them; with `givenBy`, the latest of then. */
 export async function standingInputs(
@@ -144,7 +143,7 @@ export async function openHolds(db: DbOrTx, membershipId: string): Promise<HurtH
     .orderBy(desc(hurtHolds.createdAt))
   return rows.map((row) => ({
     id: row.id,
-    place: row.place as HurtPlace,
+    place: row.place,
     since: row.createdAt.toISOString(),
     memberClearedAt: row.memberClearedAt?.toISOString() ?? null,
     coachClearedAt: row.coachClearedAt?.toISOString() ?? null,

@@ -2,7 +2,9 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { auditEntries } from '@/db/schema/audit-entries'
 import type { Viewer } from '@/server/contract/viewer'
 import { fitOwn, getMemberFit, getOwnFit, saveOwnFit, setOptionRule } from '@/server/data/fit'
+import { swapsOf, weeksLoad } from '@/server/data/loads'
 import { getPlayerData } from '@/server/data/player'
+import { classLoad } from '@/server/engine/load/class-load'
 import { makeTestDatabase, type TestDatabase } from '../support/database'
 import { makeGym, NOW, type TestGym } from '../support/gym'
 
@@ -86,5 +88,26 @@ describe('what a class is fitted to', () => {
     const audit = await test.db.select().from(auditEntries)
     expect(new Set(audit.map((one) => one.action))).toEqual(new Set(['rule.set', 'rule.removed']))
     expect(JSON.stringify(audit)).not.toContain('goblet-squat')
+  })
+})
+
+describe('what a coach sees of a class’s load', () => {
+  it('is how many members start a station on another option, and the four weeks behind', async () => {
+    const swaps = await swapsOf(coach, { version: gym.version }, test.db)
+    const fitted = await fitOwn(member, { version: gym.version }, test.db)
+    const swapped = fitted.filter((one) => one.option !== 'as-planned').length
+    expect(swapped).toBeGreaterThan(0)
+    expect(swaps.reduce((sum, one) => sum + one.members, 0)).toBe(swapped)
+    expect(swaps[0]?.of).toBe(1)
+    // The one class of the fixture is today's: it is not behind yet, tomorrow it is.
+    expect((await weeksLoad(coach, { now: NOW }, test.db)).classes).toBe(0)
+    const later = new Date(NOW.getTime() + 86_400_000)
+    const weeks = await weeksLoad(coach, { now: later }, test.db)
+    expect(weeks.classes).toBe(1)
+    expect(weeks.patterns).toEqual(classLoad(gym.version).patterns)
+    for (const other of [member, owner]) {
+      await expect(swapsOf(other, { version: gym.version }, test.db)).rejects.toThrow()
+      await expect(weeksLoad(other, { now: NOW }, test.db)).rejects.toThrow()
+    }
   })
 })

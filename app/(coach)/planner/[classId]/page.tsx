@@ -5,6 +5,7 @@ import { PageFrame } from '@/components/site/page-frame'
 import { orNotFound, requireRole } from '@/server/auth/viewer'
 import { paths } from '@/server/contract/paths'
 import { defaultDb } from '@/server/data/db'
+import { swapsOf, weeksLoad } from '@/server/data/loads'
 import { forecastsOf, getLearntPaces } from '@/server/data/paces'
 import { getPlannedClass } from '@/server/data/planned-classes'
 import { readerDateStyle } from '@/server/http/reader'
@@ -34,6 +35,8 @@ export default async function PlannerClassPage({ params }: PageProps) {
       <PlannedClassPage
         planned={planned}
         learnt={learnt}
+        weeks={await weeksLoad(viewer, { now }, defaultDb())}
+        swaps={await swapsOf(viewer, { version: planned.version }, defaultDb())}
         forecasts={forecastsOf(planned.version, learnt)}
         timeZone={viewer.gym.timeZone}
         dateStyle={await readerDateStyle()}
