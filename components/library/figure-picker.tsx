@@ -56,7 +56,7 @@ export function FigurePicker({
           figure={value || drawnForNone}
           label=""
           frame="stature"
-          className="h-32 w-32 shrink-0"
+          className="h-32 w-32 shrink-0 overflow-visible"
         />
         <div className="min-w-0 pb-3">
           <p className="leading-snug">{value === '' ? none : figureText(value)}</p>
@@ -158,17 +158,20 @@ function Choice({
       onClick={onChoose}
       className={clsx(
         'flex h-full w-full cursor-pointer flex-col hover:bg-fill',
-        isChosen ? 'border-4 border-present bg-raised' : 'border-4 border-fill',
+        isChosen ? 'border-4 border-line bg-raised' : 'border-4 border-fill',
       )}
     >
       <StillFigure
         figure={figure}
         label=""
         frame="stature"
-        className="h-28 w-full border-b-4 border-line-lesser px-2"
+        className="mt-4 h-28 w-full overflow-visible border-b-4 border-line-lesser px-2"
       />
       <span
-        className={clsx('flex-1 px-2 py-1.5 text-left leading-tight', isChosen && 'font-semibold')}
+        className={clsx(
+          'flex-1 px-2 py-1.5 text-left leading-tight',
+          isChosen && 'bg-present font-semibold text-on-present',
+        )}
       >
         {text}
         {isChosen ? <span className="sr-only">, chosen</span> : null}

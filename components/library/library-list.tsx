@@ -103,7 +103,7 @@ export function LibraryList({ rows }: { rows: readonly LibraryRow[] }) {
 const Tile = memo(function Tile({ row }: { row: LibraryRow }) {
   const kit = kitWords(row.kit)
   return (
-    <li className="relative flex min-h-34 gap-4 border-b-4 border-fill pt-3 [contain-intrinsic-size:auto_8.5rem] [content-visibility:auto] hover:border-present has-focus-visible:border-present">
+    <li className="relative flex min-h-34 gap-4 border-b-4 border-fill pt-3 [contain-intrinsic-size:auto_7.5rem] [content-visibility:auto] hover:border-present has-focus-visible:border-present">
       <SheetFigure figure={row.figure} className="h-31 w-28 shrink-0 self-end" />
       <div className="min-w-0 flex-1 self-center pb-2 leading-snug">
         <Link

@@ -169,7 +169,7 @@ function Option({ movement, option }: { movement: Movement; option: MovementOpti
           figure={option.figure ?? movement.figure ?? 'standing'}
           timing={timingOf(movement, option)}
           frame="stature"
-          className="h-full max-w-full"
+          className="h-full max-w-full overflow-visible"
         />
       </div>
       {/* A coach's own clip or picture of the option has its place here. */}

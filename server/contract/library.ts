@@ -9,7 +9,7 @@ import {
   type POSITIONS,
 } from '../engine/spec/names'
 import { parseSpecOrVersion } from '../engine/spec/problems'
-import { KIT_ITEMS, REPS_HELP } from './library-words'
+import { KIT_ITEMS, muscleText, REPS_HELP } from './library-words'
 import { storable } from './text'
 
 export type Pattern = (typeof PATTERNS)[number]
@@ -261,6 +261,13 @@ function* ownRules(
     if (option.level === 'easier' && option.reasons.includes('wants-more')) {
       yield [['options', index, 'reasons'], 'An easier option is not for somebody who wants more.']
     }
+  }
+  const twice = fields.muscles?.secondary.find((one) => fields.muscles?.primary.includes(one))
+  if (twice) {
+    yield [
+      ['muscles', 'secondary'],
+      `${muscleText(twice)} is among those that work most already. Take it out of one.`,
+    ]
   }
   for (const [index, { fault }] of fields.faults.entries()) {
     if (fault === '') yield [['faults', index, 'fault'], 'Say which fault this corrects.']

@@ -228,10 +228,28 @@ function canonical(value: unknown): string {
   )
 }
 
+/** A movement with its lists of words in one order: a form gives them in its own, which changes nothing. */
+function ordered(movement: Movement): Movement {
+  const { muscles } = movement
+  return {
+    ...movement,
+    joints: [...movement.joints].sort(),
+    kit: [...movement.kit].sort(),
+    ...(muscles && {
+      muscles: {
+        primary: [...muscles.primary].sort(),
+        secondary: [...muscles.secondary].sort(),
+      },
+    }),
+    options: movement.options.map((one) => ({ ...one, reasons: [...one.reasons].sort() })),
+  }
+}
+
 /** Names of the fields that differ. */
 function changedFields(before: Movement, after: Movement): string[] {
-  const keys = new Set([...Object.keys(before), ...Object.keys(after)]) as Set<keyof Movement>
-  return [...keys].filter((key) => canonical(before[key]) !== canonical(after[key]))
+  const [one, other] = [ordered(before), ordered(after)]
+  const keys = new Set([...Object.keys(one), ...Object.keys(other)]) as Set<keyof Movement>
+  return [...keys].filter((key) => canonical(one[key]) !== canonical(other[key]))
 }
 
 function movementOf(slug: string, { options, ...fields }: MovementChange['fields']): Movement {

@@ -29,6 +29,7 @@ describe('a movement’s form', () => {
     [{ change: 'soon' }, 'change', /seconds from 0 to 600/],
     [{ steps: `Sit.\n${'x'.repeat(201)}` }, 'steps', /^Step 2: .*200/],
     [{ cues: 'x'.repeat(81) }, 'cues', /^Cue 1: .*80/],
+    [{ primary: ['quads'], secondary: ['glutes', 'quads'] }, 'secondary', /Quads is among/],
     [{ 'faults.f1.correction': 'Do this' }, 'faults.f1.fault', /which fault/],
     [{ 'options.a.name': '' }, 'options.a.name', /1 to 60/],
     [{ 'options.a.name': 'pause LOW' }, 'options.c.name', /this name/],
