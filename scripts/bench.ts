@@ -11,7 +11,9 @@ import type { PublishedVersion } from '@/server/engine/spec/version'
 import type { ClassEvent } from '@/server/engine/tally/events'
 import { fold } from '@/server/engine/tally/fold'
 import { compile, realLengthMs } from '@/server/engine/timeline/compile'
+import { browserRows } from './bench-browser'
 import { dataRows } from './bench-data'
+import { loadRow } from './bench-load'
 import type { BenchRow } from './bench-row'
 
 /** `measuredMs`, `barMs`: milliseconds. */
@@ -152,9 +154,15 @@ function engineRows(): BenchRow[] {
 }
 
 async function main(): Promise<void> {
-  const url = process.env.TEST_DATABASE_URL
-  if (!url) throw new Error('Say `npm run bench`: it starts the database that this measures on.')
-  const rows = [...engineRows(), ...(await dataRows(url))]
+  const parts = process.env.BENCH_PARTS?.split(',') ?? []
+  const url = process.env.TEST_DATABASE_URL ?? ''
+  const origin = process.env.BENCH_ORIGIN ?? ''
+  const rows: BenchRow[] = []
+  if (parts.includes('engine')) rows.push(...engineRows())
+  if (parts.includes('data')) rows.push(...(await dataRows(url)))
+  if (parts.includes('browser')) rows.push(...(await browserRows(origin, url)))
+  if (parts.includes('load')) rows.push(await loadRow(origin, url))
+  if (rows.length === 0) throw new Error('Say `npm run bench`: it starts what this measures on.')
   console.table(rows.map(({ isHeld, ...row }) => ({ ...row, held: isHeld ? 'yes' : 'NO' })))
   if (rows.some((row) => !row.isHeld)) process.exitCode = 1
 }
