@@ -43,6 +43,7 @@ export function LibraryFilters({ filter, setFilter, kit, address }: LibraryFilte
     Boolean,
   ).length
   const items = [...new Set([...KIT_ITEMS, ...kit])]
+  // Columns of set shares: as wide as their words they would break anew once the letters have come.
   return (
     <form
       role="search"
@@ -52,9 +53,9 @@ export function LibraryFilters({ filter, setFilter, kit, address }: LibraryFilte
         event.preventDefault()
         read(event.currentTarget)
       }}
-      className="mt-5 grid gap-x-4 gap-y-3 sm:flex sm:flex-wrap sm:items-end"
+      className="mt-5 grid max-w-[88rem] items-end gap-x-4 gap-y-3 sm:grid-cols-4 xl:grid-cols-[1.5fr_1.2fr_1.05fr_1.15fr_1.45fr_1fr_1.2fr]"
     >
-      <Labelled label="Search" className="sm:w-60">
+      <Labelled label="Search">
         <input
           type="search"
           name="q"
@@ -181,7 +182,7 @@ function Choice({
         onChange={(event) => {
           if (event.target.form) onChange(event.target.form)
         }}
-        className="h-12 w-full cursor-pointer border-b-4 border-line bg-raised px-2 sm:max-w-52"
+        className="h-12 w-full cursor-pointer border-b-4 border-line bg-raised px-2"
       >
         {choices.map(([key, text]) => (
           <option key={key} value={key}>
