@@ -1,5 +1,6 @@
 /** What forms send. Parsed once, at the edge. */
 import { z } from 'zod'
+import { parseWeights, WEIGHED_ITEMS } from '../engine/fit/weights'
 import { HEALTH_LIMITS, HEALTH_QUESTIONS, type HealthAnswers } from '../engine/fit/screening'
 import { PASSWORD_MOST, passwordProblem } from './passwords'
 import { storable } from './text'
@@ -58,6 +59,20 @@ export const kitInput = z
     z.number().int().min(0).max(20),
   )
   .refine((kit) => Object.keys(kit).length <= 100, 'That is more kit than fits here.')
+
+/** What a member writes of the weights of their kit. */
+export const weightsInput = z.partialRecord(
+  z.enum(WEIGHED_ITEMS),
+  z
+    .string()
+    .max(200, 'That is longer than 20 weights need.')
+    .transform((text, context) => {
+      const read = parseWeights(text)
+      if ('kilograms' in read) return read.kilograms
+      context.addIssue({ code: 'custom', message: read.problem })
+      return z.NEVER
+    }),
+)
 
 /** Only a path of this product may follow a sign-in: `/…`, never `//…` nor another address. */
 export function safeNext(next: string | null | undefined): string | null {

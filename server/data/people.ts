@@ -78,12 +78,16 @@ export const getKit = timed(
   },
 )
 
-/** Replaces the viewer's own kit. */
+/** Replaces the viewer's own kit; weights in kilograms. */
 export const saveKit = timed(
-  async (viewer: Viewer, params: { kit: Record<string, number> }, db: DbOrTx): Promise<void> => {
+  async (
+    viewer: Viewer,
+    params: { kit: Record<string, number>; kitWeights: Record<string, number[]> },
+    db: DbOrTx,
+  ): Promise<void> => {
     await db
       .update(memberships)
-      .set({ kit: params.kit })
+      .set({ kit: params.kit, kitWeights: params.kitWeights })
       .where(eq(memberships.id, viewer.membershipId))
   },
 )

@@ -141,7 +141,7 @@ describe('own kit', () => {
   }
 
   test('counts up and down, never below none, and keeps the focus at its end', async () => {
-    render(<KitForm kit={{ dumbbell: 1 }} />)
+    render(<KitForm kit={{ dumbbell: 1 }} weights={{}} />)
     const less = line('Dumbbells').getByRole('button', { name: 'One less: Dumbbells' })
     await userEvent.click(less)
     expect(line('Dumbbells').getByRole('status').textContent).toBe('0')
@@ -153,14 +153,35 @@ describe('own kit', () => {
 
   test('tells what is not saved yet from what is', async () => {
     actions.saveOwnKit.mockResolvedValueOnce({ ok: true, value: undefined })
-    const { rerender } = render(<KitForm kit={{ mat: 1 }} />)
+    const { rerender } = render(<KitForm kit={{ mat: 1 }} weights={{}} />)
     expect(screen.queryByText('Not saved yet.')).toBeNull()
     await userEvent.click(line('Bands').getByRole('button', { name: 'One more: Bands' }))
     expect(screen.getByText('Not saved yet.')).toBeTruthy()
     await userEvent.click(screen.getByRole('button', { name: 'Save my kit' }))
     const sent = Object.fromEntries(actions.saveOwnKit.mock.calls[0]?.[1] ?? [])
     expect(sent).toMatchObject({ mat: '1', band: '1', dumbbell: '0' })
-    rerender(<KitForm kit={{ mat: 1, band: 1 }} />)
+    rerender(<KitForm kit={{ mat: 1, band: 1 }} weights={{}} />)
     expect(await screen.findByText('Your kit is saved.')).toBeTruthy()
+  })
+
+  test('asks what the pieces weigh, in kilograms or pounds, and keeps what cannot be read', async () => {
+    actions.saveOwnKit.mockResolvedValueOnce({
+      ok: false,
+      message: 'Some of the weights cannot be read.',
+      fields: { 'weights:dumbbell': '‘heavy’ is no weight.' },
+    })
+    render(<KitForm kit={{ dumbbell: 2 }} weights={{ dumbbell: [8, 8] }} />)
+    const field = screen.getByLabelText('What your dumbbells weigh')
+    expect(valueOf(field)).toBe('2 × 8 kg')
+    await userEvent.clear(field)
+    await userEvent.type(field, '8, 8')
+    expect(screen.queryByText('Not saved yet.')).toBeNull()
+    await userEvent.clear(field)
+    await userEvent.type(field, 'heavy')
+    expect(screen.getByText('Not saved yet.')).toBeTruthy()
+    await userEvent.click(screen.getByRole('button', { name: 'Save my kit' }))
+    expect(await screen.findByText('‘heavy’ is no weight.')).toBeTruthy()
+    expect(valueOf(field)).toBe('heavy')
+    await waitFor(() => expect(document.activeElement).toBe(field))
   })
 })

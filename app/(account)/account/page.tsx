@@ -17,7 +17,7 @@ import type { Viewer } from '@/server/contract/viewer'
 import { defaultDb } from '@/server/data/db'
 import { getOwnFit } from '@/server/data/fit'
 import { getHealth, listOwnHolds } from '@/server/data/health'
-import { countSessions, getKit } from '@/server/data/people'
+import { countSessions } from '@/server/data/people'
 import { readerDateStyle } from '@/server/http/reader'
 
 export const metadata: Metadata = { title: 'My account' }
@@ -27,6 +27,7 @@ export default async function AccountPage() {
   const db = defaultDb()
   const isMember = viewer.roles.includes('member')
   const sessions = await countSessions(viewer, {}, db)
+  const own = await getOwnFit(viewer, {}, db)
   return (
     <PageFrame viewer={viewer}>
       <div className="page">
@@ -42,14 +43,14 @@ export default async function AccountPage() {
                   <p className="py-3 text-text-quiet">
                     What you have at home. Classes show what is missing.
                   </p>
-                  <KitForm kit={await getKit(viewer, {}, db)} />
+                  <KitForm kit={own.kit} weights={own.kitWeights} />
                 </Part>
                 <Part title="My body" id="body">
                   <p className="py-3 text-text-quiet">
                     Classes start you on the option that spares it, and say why. You can always
                     choose another. Your coach sees these notes; they are no medical advice.
                   </p>
-                  <FitForm fit={await getOwnFit(viewer, {}, db)} />
+                  <FitForm fit={own} />
                 </Part>
                 <Part title="Health">
                   <div className="space-y-6 py-3">
