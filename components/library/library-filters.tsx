@@ -73,7 +73,7 @@ export function LibraryFilters({ filter, setFilter, kit, address }: LibraryFilte
       >
         Filters{chosen > 0 ? ` (${chosen})` : ''}
       </label>
-      <div className="hidden grid-cols-2 gap-x-4 gap-y-3 peer-checked:grid sm:contents">
+      <div className="gap-x-4 gap-y-3 max-sm:hidden max-sm:grid-cols-2 max-sm:peer-checked:grid sm:contents">
         <Choice
           label="Pattern"
           name="pattern"
