@@ -3,7 +3,7 @@ import { expect, test, type Page } from '@playwright/test'
 import { signedIn, visitor } from './gym'
 
 // Many pages at three sizes, looked at by axe: a busy computer takes its time.
-test.setTimeout(300_000)
+test.setTimeout(420_000)
 
 const SIZES = [
   { width: 390, height: 844 },
@@ -73,7 +73,9 @@ test('every page of a coach and an owner is sound for axe and at every size', as
   const attempt = await coach.page.locator('a[href*="/attempts/"]').first().getAttribute('href')
   await coach.page.goto('/planner')
   const planned = await coach.page.locator('a[href^="/planner/"]').first().getAttribute('href')
-  for (const address of [board, attempt ?? '', '/board/all', '/planner', planned ?? '']) {
+  const addresses = [board, attempt ?? '', '/board/all', '/planner', planned ?? '']
+  addresses.push('/library', '/library/goblet-squat', '/library/goblet-squat/edit', '/library/new')
+  for (const address of addresses) {
     await isSound(coach.page, address)
   }
   expect(coach.errors).toEqual([])
