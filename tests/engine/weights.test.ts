@@ -9,7 +9,7 @@ import {
 } from '@/server/engine/fit/weights'
 
 describe('kilograms and pounds', () => {
-  // The exact definition of the international avoirdupois pound: 0.45359237 kg (1959).
+  // The exact definition of the international avoirdupois pound: 0.45359237 kg (agreement of 1959; NIST Handbook 44, appendix C).
   it.each([
     [1, 0.45359237],
     [100, 45.359237],
@@ -24,12 +24,22 @@ describe('kilograms and pounds', () => {
       }),
     )
   })
-  it('are shown with one decimal where they need it', () => {
-    expect([weightText(8), weightText(7.5), weightText(8, 'lb')]).toEqual([
-      '8 kg',
-      '7.5 kg',
-      '17.6 lb',
-    ])
+  it.each([
+    [8, 'kg', '8 kg'],
+    [7.5, 'kg', '7.5 kg'],
+    // The smallest common plates.
+    [1.25, 'kg', '1.25 kg'],
+    [0.5, 'kg', '0.5 kg'],
+    // 20 lb and 50 lb by the definition.
+    [9.0718474, 'kg', '9.07 kg'],
+    [9.0718474, 'lb', '20 lb'],
+    [22.6796185, 'lb', '50 lb'],
+    // 8 ÷ 0.45359237 = 17.636…
+    [8, 'lb', '17.6 lb'],
+  ] as const)('%s kg are shown in %s as %s', (kilograms, unit, text) => {
+    expect(weightText(kilograms, unit)).toBe(text)
+  })
+  it('are shown together where they are equal', () => {
     expect(weightsText([12, 8, 8])).toBe('2 × 8 kg, 12 kg')
   })
 })
@@ -59,7 +69,7 @@ describe('weights as they are written', () => {
     )
   })
   it('come back from their own text', () => {
-    const own = [4, 7.5, 7.5, 12]
+    const own = [1.25, 4, 7.5, 7.5, 12]
     expect(parseWeights(weightsText(own))).toEqual({ kilograms: own })
   })
 })

@@ -19,10 +19,13 @@ export function poundsOf(kilograms: number): number {
   return kilograms / KILOGRAMS_PER_POUND
 }
 
-/** '8 kg', '17.6 lb': one decimal where it needs one. */
+/**
+ * '8 kg', '1.25 kg', '17.6 lb': rounded for reading alone, kilograms to hundredths, so that the smallest
+ * plates keep their weight, pounds to tenths, no zeros behind. What is kept is never rounded so.
+ */
 export function weightText(kilograms: number, unit: WeightUnit = 'kg'): string {
-  const value = unit === 'kg' ? kilograms : poundsOf(kilograms)
-  return `${Math.round(value * 10) / 10} ${unit}`
+  const [value, parts] = unit === 'kg' ? [kilograms, 100] : [poundsOf(kilograms), 10]
+  return `${Math.round(value * parts) / parts} ${unit}`
 }
 
 /** '2 × 8 kg, 12 kg': equal ones together, the lightest first. */
