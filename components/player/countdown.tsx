@@ -15,6 +15,12 @@ export function countdownText(position: Position): string {
   return clockText(position.leftMs)
 }
 
+/** Milliseconds until the digits change; none while they stand. */
+function untilNextSecond({ phase, halted, briefLeftMs, leftMs }: Position): number | undefined {
+  const shownMs = phase === 'brief' ? briefLeftMs : leftMs
+  return halted || !shownMs ? undefined : shownMs % 1_000 || 1_000
+}
+
 function widestText(position: Position): string {
   if (position.phase === 'brief')
     return position.briefLeftMs === null ? '0:00' : clockText(position.briefLeftMs)
@@ -33,6 +39,7 @@ export function Countdown({ position }: { position: Position }) {
   usePaint((now) => {
     const text = countdownText(now)
     if (digits.current && digits.current.textContent !== text) digits.current.textContent = text
+    return untilNextSecond(now)
   })
   return (
     <div

@@ -3,33 +3,46 @@ import { useEffect, useRef } from 'react'
 import type { Position } from '@/server/engine/timeline/run-types'
 import { usePlayerStore } from './player-context'
 
+/** A change nearer than this is painted at its own instant: a frame may come too late for its sound. */
+const SOON_MS = 60
+
 /**
  * Calls `paint` in every animation frame with the position of that very instant. Painting writes to
- * the DOM itself: rendering sixty times a second would cost a slow laptop its figure.
+ * the DOM itself: rendering sixty times a second would cost a slow laptop its figure. What `paint` gives
+ * back, if anything, is in how many milliseconds it has something new to paint.
  */
-export function usePaint(paint: (position: Position) => void): void {
+export function usePaint(paint: (position: Position) => number | void): void {
   const store = usePlayerStore()
   const latest = useRef(paint)
   useEffect(() => {
     latest.current = paint
   })
   useEffect(() => {
-    let known: Position | null = null
-    let knownAtMs = 0
     let frame = 0
-    const draw = (frameMs: number) => {
-      const { position } = store.getState()
-      if (position) {
-        if (position !== known) {
-          known = position
-          knownAtMs = performance.now()
-        }
-        latest.current(ahead(position, Math.max(0, frameMs - knownAtMs)))
-      }
-      frame = requestAnimationFrame(draw)
+    let timer: ReturnType<typeof setTimeout> | null = null
+    const draw = () => {
+      const { position, positionAtMs } = store.getState()
+      if (!position) return
+      const sinceMs = Math.max(0, performance.now() - positionAtMs)
+      const inMs = latest.current(ahead(position, sinceMs))
+      if (typeof inMs !== 'number' || inMs > SOON_MS || timer !== null) return
+      timer = setTimeout(
+        () => {
+          timer = null
+          draw()
+        },
+        Math.max(0, inMs),
+      )
     }
-    frame = requestAnimationFrame(draw)
-    return () => cancelAnimationFrame(frame)
+    const step = () => {
+      draw()
+      frame = requestAnimationFrame(step)
+    }
+    frame = requestAnimationFrame(step)
+    return () => {
+      cancelAnimationFrame(frame)
+      if (timer !== null) clearTimeout(timer)
+    }
   }, [store])
 }
 

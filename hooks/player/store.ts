@@ -106,6 +106,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
     attemptId: null,
     run: null,
     position: null,
+    positionAtMs: 0,
     tally: null,
     events: [],
     options: fittedOptions(data),
@@ -313,7 +314,7 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
     clock.restart()
     runner.begin(now)
     speaker.begin(now)
-    set({ run, position: positionAt(run, now) })
+    set({ run, position: positionAt(run, now), positionAtMs: clock.toMonotonic(now) })
     endTick ??= ports.tick(tick)
   }
 
@@ -408,7 +409,10 @@ export function createPlayer(data: PlayerData, ports: PlayerPorts): Player {
   function refresh(now: number): void {
     const { run, events } = get()
     if (!run) return
-    const patch: Partial<PlayerState> = { position: positionAt(run, now) }
+    const patch: Partial<PlayerState> = {
+      position: positionAt(run, now),
+      positionAtMs: clock.toMonotonic(now),
+    }
     patch.cueLine = marksAhead(run, now, CUE_LINE_MS).flatMap((mark) => {
       const text = markText(data.version, run.timeline.segments, mark)
       return text === null ? [] : [{ mark, text, dueInMs: mark.dueAtMs - now }]

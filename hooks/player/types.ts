@@ -44,6 +44,8 @@ export interface PlayerState {
   run: Run | null
   /** Refreshed several times a second and at every command. */
   position: Position | null
+  /** The instant of `position` on the page's own clock (performance.now()): what is painted goes on from it. */
+  positionAtMs: number
   tally: AttemptTally | null
   events: ClassEvent[]
   /** option slug per station, as chosen before class or in it. */

@@ -95,6 +95,7 @@ export function fakePlayer(
       events,
       options: chosen,
       position,
+      positionAtMs: performance.now(),
       tally: fold(data.version, events),
       cueLine: lines,
     }
@@ -126,6 +127,7 @@ export function fakePlayer(
     attemptId: null,
     run: null,
     position: null,
+    positionAtMs: 0,
     tally: null,
     events: [],
     options: chosen,
