@@ -6,7 +6,7 @@ import { Button, LinkButton } from '@/components/ui/button'
 import { Empty } from '@/components/ui/empty'
 import { Part } from '@/components/ui/heading'
 import { plural } from '@/server/contract/format'
-import type { LibraryRow } from '@/server/contract/library'
+import type { LibraryRow } from '@/server/contract/library-types'
 import {
   filterLibrary,
   libraryQuery,

@@ -6,7 +6,7 @@ import { FormMessage } from '@/components/ui/form-errors'
 import { KeptForm } from '@/components/ui/kept-form'
 import { SubmitButton } from '@/components/ui/submit-button'
 import { archiveMovement, backToBuiltIn, bringBackMovement } from '@/server/actions/library'
-import type { LibraryMovement } from '@/server/contract/library'
+import type { LibraryMovement } from '@/server/contract/library-types'
 import { paths } from '@/server/contract/paths'
 
 /** What a coach can do with a movement as a whole. Archiving is taken back by the same button. */

@@ -9,7 +9,7 @@ import { SubmitButton } from '@/components/ui/submit-button'
 import { Tick } from '@/components/ui/tick'
 import { saveMovement } from '@/server/actions/library'
 import type { ActionResult } from '@/server/contract/errors'
-import type { LibraryMovement } from '@/server/contract/library'
+import type { LibraryMovement } from '@/server/contract/library-types'
 import {
   impactText,
   jointText,

@@ -6,7 +6,7 @@ import { PageTitle, Part } from '@/components/ui/heading'
 import { Notice } from '@/components/ui/notice'
 import { repsText } from '@/server/contract/block-text'
 import { plural } from '@/server/contract/format'
-import type { LibraryMovement } from '@/server/contract/library'
+import type { LibraryMovement } from '@/server/contract/library-types'
 import {
   impactText,
   jointText,

@@ -1,6 +1,6 @@
 /** What of the library a coach looks at, kept in the address. Pure; the page, its browser side and the data share it. */
 import { IMPACTS, JOINTS, PATTERNS, POSITIONS } from '../engine/spec/names'
-import type { Impact, Joint, LibraryRow, Pattern, Position } from './library'
+import type { Impact, Joint, LibraryRow, Pattern, Position } from './library-types'
 import { kitWords, patternText } from './library-words'
 
 /** `ready`: what can be planned with. `own`: of these, what the gym wrote or changed. `archived`: put away. */

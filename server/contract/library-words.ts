@@ -1,5 +1,5 @@
 /** The library's lists in the words of the trade. Apart from what parses, so that a page carries no parser. */
-import type { Impact, Joint, LibraryRow, Pattern, Position } from './library'
+import type { Impact, Joint, LibraryRow, Pattern, Position } from './library-types'
 import type { Level, Muscle, Reason } from '../engine/spec/movement'
 import type { Reps, Sides, Tempo } from '../engine/spec/schema'
 import { kitText } from './kit-text'

@@ -1,51 +1,10 @@
 /** The gym's movement library as its coaches see and write it. */
 import { z } from 'zod'
-import { movementOptionSchema, movementSchema, type Movement } from '../engine/spec/movement'
-import {
-  AS_PLANNED,
-  type IMPACTS,
-  type JOINTS,
-  type PATTERNS,
-  type POSITIONS,
-} from '../engine/spec/names'
+import { movementOptionSchema, movementSchema } from '../engine/spec/movement'
+import { AS_PLANNED } from '../engine/spec/names'
 import { parseSpecOrVersion } from '../engine/spec/problems'
 import { KIT_ITEMS, muscleText, REPS_HELP } from './library-words'
 import { storable } from './text'
-
-export type Pattern = (typeof PATTERNS)[number]
-export type Position = (typeof POSITIONS)[number]
-export type Impact = (typeof IMPACTS)[number]
-export type Joint = (typeof JOINTS)[number]
-
-export interface LibraryRow {
-  slug: string
-  name: string
-  pattern: Pattern
-  position: Position
-  impact: Impact
-  joints: Joint[]
-  kit: string[]
-  /** Of all options, the planned one among them. */
-  options: number
-  /** Of the easier and harder ones. */
-  optionNames: string[]
-  /** `copy`: the gym's own, in place of the built-in of the same slug. */
-  origin: 'built-in' | 'copy' | 'own'
-  archived: boolean
-  figure: string | null
-}
-
-export interface LibraryMovement {
-  movement: Movement
-  origin: LibraryRow['origin']
-  archived: boolean
-  /** Stands for what was read: a change that is based on an older one is refused. */
-  token: string
-  /** Classes whose latest version has it, by title. */
-  usedIn: { classId: string; title: string }[]
-  /** Dates ahead whose version has it. */
-  ahead: number
-}
 
 const MOST_LINES = 20
 const MOST_OPTIONS = 30

@@ -10,12 +10,8 @@ import { movements } from '@/db/schema/movements'
 import { people } from '@/db/schema/people'
 import { scheduledClasses } from '@/db/schema/scheduled-classes'
 import { AppError } from '@/server/contract/errors'
-import {
-  freeSlug,
-  type LibraryMovement,
-  type LibraryRow,
-  type MovementChange,
-} from '@/server/contract/library'
+import { freeSlug, type MovementChange } from '@/server/contract/library'
+import type { LibraryMovement, LibraryRow } from '@/server/contract/library-types'
 import { filterLibrary, type LibraryFilter } from '@/server/contract/library-filter'
 import type { Viewer } from '@/server/contract/viewer'
 import type { Movement } from '@/server/engine/spec/movement'

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { freeSlug, readMovementForm, type LibraryRow } from '@/server/contract/library'
+import { freeSlug, readMovementForm } from '@/server/contract/library'
+import type { LibraryRow } from '@/server/contract/library-types'
 import {
   filterLibrary,
   libraryQuery,
