@@ -28,7 +28,7 @@ export function Load({
         <thead className="text-[0.9em] text-text-quiet">
           <tr>
             <th className="pb-1 font-normal">Pattern</th>
-            <th className="pb-1 font-normal">
+            <th className="pb-1 font-normal max-sm:hidden">
               <span className="sr-only">this class, as a bar</span>
             </th>
             <th className="pb-1 pl-3 text-right font-normal">here</th>
@@ -38,8 +38,8 @@ export function Load({
         <tbody>
           {load.patterns.map((one) => (
             <tr key={one.pattern} className="border-t-2 border-fill">
-              <td className="py-1.5 pr-3 whitespace-nowrap">{word(one.pattern)}</td>
-              <td className="w-[40%] py-1.5" aria-hidden="true">
+              <td className="py-1.5 pr-3">{word(one.pattern)}</td>
+              <td className="w-[40%] py-1.5 max-sm:hidden" aria-hidden="true">
                 <span
                   className="block h-4 bg-button"
                   style={{ width: `${(one.reps / most) * 100}%` }}
