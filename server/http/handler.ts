@@ -17,16 +17,18 @@ type Handled<P> = (request: Request, params: P, session: Session) => Promise<Res
 
 /**
  * Wraps a handler for signed-in people. Errors become `ErrorBody` with their status; unknown ones are
- * logged under an id, and only the id is shown.
+ * logged under an id, and only the id is shown. `body`: what a change is sent as; a file may be of any type
+ * that its sender says, and is told by its bytes.
  */
 export function handler<P extends Record<string, string>>(
   handled: Handled<P>,
+  { body = 'json' }: { body?: 'json' | 'file' } = {},
 ): (request: Request, context: Context<P>) => Promise<Response> {
   return async (request, context) => {
     try {
       if (request.method !== 'GET' && request.method !== 'HEAD') {
         checkOrigin(request.headers)
-        checkJson(request)
+        if (body === 'json') checkJson(request)
       }
       const session = await currentSession()
       if (!session)

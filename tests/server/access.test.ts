@@ -1,4 +1,5 @@
-import { readdirSync, readFileSync } from 'node:fs'
+import { mkdtempSync, readdirSync, readFileSync, rmSync } from 'node:fs'
+import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { v7 } from 'uuid'
 import { afterAll, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest'
@@ -9,6 +10,8 @@ import { movements } from '@/db/schema/movements'
 import type { Viewer } from '@/server/contract/viewer'
 import { AppError, ERROR_STATUS } from '@/server/contract/errors'
 import { HEALTH_QUESTIONS } from '@/server/engine/fit/screening'
+import { AS_PLANNED } from '@/server/engine/spec/names'
+import { startFakeS3, type FakeS3 } from '@/scripts/lib/fake-s3.mjs'
 import {
   ACTIONS,
   HANDLERS,
@@ -45,6 +48,9 @@ let gym: TestGym
 let attemptId: string
 let holdId: string
 let slug: string
+let store: FakeS3
+let mediaId: string
+const objects = mkdtempSync(join(tmpdir(), 'floorside-objects-'))
 const people = new Map<Visitor, Viewer>()
 const tokens = new Map<Visitor, string | null>()
 
@@ -88,6 +94,9 @@ beforeAll(async () => {
   )
   const [hold] = await test.db.select().from(hurtHolds)
   holdId = hold?.id ?? ''
+  store = await startFakeS3({ folder: objects })
+  for (const [name, value] of Object.entries(store.env)) vi.stubEnv(name, value)
+  mediaId = await clipWithStill()
 })
 beforeEach(async () => {
   const { startSession } = await import('@/server/auth/lucia')
@@ -105,8 +114,48 @@ beforeEach(async () => {
 })
 afterAll(async () => {
   vi.useRealTimers()
+  vi.unstubAllEnvs()
+  await store.close()
+  rmSync(objects, { recursive: true, force: true })
   await test.end()
 })
+
+/** A clip of the movement's planned option with its still, for whoever may look at them. */
+async function clipWithStill(): Promise<string> {
+  const { setMedia, setPoster } = await import('@/server/data/media')
+  const { putObject } = await import('@/server/storage/objects')
+  const coach = people.get('coach')
+  if (!coach) throw new Error('no coach')
+  const id = v7()
+  const name = { movement: slug, option: AS_PLANNED, mediaId: id }
+  const type = { kind: 'clip', contentType: 'video/mp4' } as const
+  const [storageKey, posterKey] = [`media/${id}`, `media/${id}/still`]
+  for (const key of [storageKey, posterKey]) {
+    const chunks = (async function* () {
+      yield Buffer.from('some')
+    })()
+    await putObject(key, chunks, { bytes: 4, contentType: type.contentType })
+  }
+  await setMedia(coach, { ...name, type, bytes: 4, storageKey, now: NOW }, test.db)
+  await setPoster(coach, { ...name, posterKey }, test.db)
+  return id
+}
+
+/** What each handler is sent that changes something. */
+function bodyFor(what: string): { type: string; body?: BodyInit; length?: number } {
+  if (what.startsWith('PUT')) {
+    const jpeg = Uint8Array.from([0xff, 0xd8, 0xff, 0xe0])
+    return { type: 'image/jpeg', body: jpeg, length: jpeg.length }
+  }
+  const type = 'application/json'
+  if (!what.startsWith('POST')) return { type }
+  const body = JSON.stringify({
+    scheduledClassId: gym.scheduledClassId,
+    versionId: gym.versionId,
+    events: stamped([{ type: 'paused', classMs: 9_000 }], 'device-a', 3),
+  })
+  return { type, body }
+}
 
 /** What Next's own redirect and notFound throw, and our errors, as outcomes. */
 function thrown(error: unknown): Outcome {
@@ -123,6 +172,7 @@ const ids = () => ({
   classId: gym.classId,
   attemptId,
   slug,
+  option: AS_PLANNED,
 })
 
 function files(folder: string, name: string): string[] {
@@ -197,21 +247,18 @@ describe('route handlers', () => {
       /* @vite-ignore */ `../../${handlerFiles.get(what) ?? ''}`
     )) as Record<string, (request: Request, context: object) => Promise<Response>>
     const ending = new AbortController()
-    const url = `http://gym.example${address.replace('[attemptId]', attemptId).replace('[scheduledClassId]', gym.scheduledClassId)}?boards=${gym.scheduledClassId}`
+    const url = `http://gym.example${address.replace('[attemptId]', attemptId).replace('[scheduledClassId]', gym.scheduledClassId)}?boards=${gym.scheduledClassId}${what.startsWith('PUT') ? `&v=${mediaId}` : ''}`
+    const { type, body, length } = bodyFor(what)
     const answer = await routes[method]?.(
       new Request(url, {
         method,
         signal: ending.signal,
-        headers: { 'sec-fetch-site': 'same-origin', 'content-type': 'application/json' },
-        ...(method === 'POST'
-          ? {
-              body: JSON.stringify({
-                scheduledClassId: gym.scheduledClassId,
-                versionId: gym.versionId,
-                events: stamped([{ type: 'paused', classMs: 9_000 }], 'device-a', 3),
-              }),
-            }
-          : {}),
+        headers: {
+          'sec-fetch-site': 'same-origin',
+          'content-type': type,
+          ...(length === undefined ? {} : { 'content-length': String(length) }),
+        },
+        ...(body === undefined ? {} : { body }),
       }),
       { params: Promise.resolve(ids()) },
     )
