@@ -49,7 +49,7 @@ export const carryMovements: Movement[] = [
         'Stand and hold',
         ['hip', 'ankle-or-foot', 'balance', 'knee'],
         'Both feet stay down: stand tall with the weight at your side and count the seconds.',
-        { figure: 'standing' },
+        { figure: 'suitcase-hold' },
       ),
       planned('One dumbbell, knees towards hip height.'),
       harder('knee-stays-up', 'Knee stays up', 'Hold every knee for two seconds at hip height.', {
@@ -72,7 +72,7 @@ export const carryMovements: Movement[] = [
     sides: 'alternate',
     secondsPerRep: 1.4,
     change: 5,
-    figure: 'suitcase-march',
+    figure: 'farmer-march',
     start: 'Pick both dumbbells up with bent hips and knees, stand tall, arms hanging beside you.',
     steps: [
       'Pull the shoulders back and down, ribs over the belt.',
@@ -105,6 +105,7 @@ export const carryMovements: Movement[] = [
         'One dumbbell',
         ['only-one-dumbbell'],
         'One dumbbell; change hands after half of the reps.',
+        { figure: 'suitcase-march' },
       ),
       planned('Both dumbbells, knees towards hip height.'),
       harder('knee-stays-up', 'Knee stays up', 'Hold every knee for two seconds at hip height.', {

@@ -1,3 +1,4 @@
+import { CARRY } from './data/carry'
 import { CORE_MOBILITY } from './data/core-mobility'
 import { HINGE } from './data/hinge'
 import { PUSH_PULL } from './data/push-pull'
@@ -12,5 +13,6 @@ export const FIGURES: Record<FigureSlug, FigureData> = {
   ...SQUAT_LUNGE,
   ...HINGE,
   ...PUSH_PULL,
+  ...CARRY,
   ...CORE_MOBILITY,
 }

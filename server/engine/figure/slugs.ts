@@ -19,6 +19,7 @@ export const FIGURE_SLUGS = [
   // Squat
   'squat',
   'goblet-squat',
+  'front-squat',
   'chair-squat',
   'squat-jump',
   'squat-to-press',
@@ -56,6 +57,10 @@ export const FIGURE_SLUGS = [
   'band-pull-apart',
   'curl',
   'suitcase-march',
+  'farmer-march',
+  'goblet-march',
+  'overhead-march',
+  'suitcase-hold',
   // Core
   'dead-bug',
   'heel-taps',

@@ -4,11 +4,15 @@ import { FEET, HANGING, key, onFeet, STANDING_HIPS, withArms } from './common'
 
 const standing = onFeet(4, -3, 1)
 const deep = onFeet(83, -30, 38, { nod: -16 })
+const frontDeep = onFeet(85, -35, 24, { nod: -16 })
 
 const GOBLET_UP: ArmPose = { upper: 14, forearm: 150 }
 const GOBLET_DOWN: ArmPose = { upper: 30, forearm: 156 }
 const RACK_UP: ArmPose = { upper: 22, forearm: 166, upperOut: 14, forearmOut: 0 }
 const RACK_DOWN: ArmPose = { upper: 50, forearm: 176, upperOut: 10, forearmOut: 0 }
+/** A dumbbell's end on each shoulder, elbows pointing forward. */
+const SHOULDERED_UP: ArmPose = { upper: 36, forearm: 181 }
+const SHOULDERED_DOWN: ArmPose = { upper: 42, forearm: 184 }
 const OVERHEAD: ArmPose = { upper: 174, forearm: 178 }
 
 const squatWith = (up: ArmPose, down: ArmPose): readonly [Key, Key] => [
@@ -83,6 +87,16 @@ export const SQUAT_LUNGE = {
     view: 'side',
     kit: [{ kind: 'dumbbell', hand: 'near', hold: 'upright' }],
     keys: squatWith(GOBLET_UP, GOBLET_DOWN),
+  },
+  'front-squat': {
+    description:
+      'A squat with one end of a dumbbell on each shoulder, elbows forward, trunk nearly upright.',
+    view: 'side',
+    kit: [{ kind: 'dumbbell', hand: 'both' }],
+    keys: [
+      key(withArms(standing, SHOULDERED_UP), 1.8, { part: 'down', end: 'top' }),
+      key(withArms(frontDeep, SHOULDERED_DOWN), 1.2, { part: 'up', end: 'bottom' }),
+    ],
   },
   'chair-squat': {
     description: 'Sitting back until the hips touch a chair, then standing up.',
