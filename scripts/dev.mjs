@@ -2,6 +2,7 @@
 import { endOnSignals, failWith, finish, must, start, step } from './lib/steps.mjs'
 import { startLastingDatabase } from './lib/postgres.mjs'
 import { ensurePackages, next, tsx } from './lib/project.mjs'
+import { startLastingStore } from './lib/storage.mjs'
 
 async function main() {
   await step('Packages', ensurePackages)
@@ -13,7 +14,13 @@ async function main() {
       return database.remark
     })
   }
-  const env = { ...process.env, DATABASE_URL: url }
+  let storage = {}
+  await step('Clips and pictures', async () => {
+    const store = await startLastingStore()
+    storage = store.env
+    return store.remark
+  })
+  const env = { ...process.env, ...storage, DATABASE_URL: url }
   for (const command of ['migrate', 'seed']) {
     await step(command === 'migrate' ? 'Schema' : 'Demo gym', () =>
       must(process.execPath, [tsx, 'scripts/db.ts', command], { env }).then((output) =>

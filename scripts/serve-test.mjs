@@ -1,10 +1,12 @@
 /**
  * Serves the test build for the browser tests: `node scripts/serve-test.mjs PORT`, started by Playwright.
- * The database that DATABASE_URL names is brought up to date and gets the demo gym first.
+ * The database that DATABASE_URL names is brought up to date and gets the demo gym first; clips and pictures
+ * lie in a store that is thrown away.
  */
 import { mkdirSync, openSync, rmSync } from 'node:fs'
 import { endOnSignals, failWith, finish, HOME, must, Problem, start } from './lib/steps.mjs'
 import { next, tsx } from './lib/project.mjs'
+import { startThrowAwayStore } from './lib/storage.mjs'
 
 async function main() {
   mkdirSync(HOME, { recursive: true })
@@ -15,7 +17,9 @@ async function main() {
   for (const command of ['migrate', 'seed']) {
     await must(process.execPath, [tsx, 'scripts/db.ts', command])
   }
+  const storage = await startThrowAwayStore()
   const server = start(process.execPath, [next, 'start', '-H', '127.0.0.1', '-p', port], {
+    env: { ...process.env, ...storage },
     // The last browser test reads what the server said.
     stdio: ['ignore', log, log],
   })

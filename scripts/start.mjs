@@ -2,6 +2,7 @@
 import { endOnSignals, failWith, finish, must, Problem, start, step } from './lib/steps.mjs'
 import { isPortUsed, startLastingDatabase } from './lib/postgres.mjs'
 import { ensureBuild, ensurePackages, next, tsx } from './lib/project.mjs'
+import { startLastingStore } from './lib/storage.mjs'
 
 const host = process.env.HOST ?? '127.0.0.1'
 const port = Number(process.env.PORT ?? 3000)
@@ -53,8 +54,15 @@ async function main() {
       return database.remark
     })
   }
+  let storage = {}
+  await step('Clips and pictures', async () => {
+    const store = await startLastingStore()
+    storage = store.env
+    return store.remark
+  })
   const env = {
     ...process.env,
+    ...storage,
     DATABASE_URL: url,
     APP_ORIGIN: process.env.APP_ORIGIN ?? `http://${host}:${port}`,
   }

@@ -44,6 +44,8 @@ function store(): Store {
   const settings = [S3_ENDPOINT, S3_BUCKET, S3_REGION, S3_ACCESS_KEY_ID].join(' ')
   if (kept.floorsideStore?.settings === settings) return kept.floorsideStore
   kept.floorsideStore?.client.destroy()
+  // The lock file holds the SDK: which Node its later versions need is no news for whoever serves a gym.
+  process.env.AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED ??= 'true'
   const client = new S3Client({
     endpoint: S3_ENDPOINT,
     region: S3_REGION,
