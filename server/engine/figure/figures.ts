@@ -1,8 +1,10 @@
 import { CARRY } from './data/carry'
 import { CORE_MOBILITY } from './data/core-mobility'
 import { HINGE } from './data/hinge'
+import { JUMP_CRAWL } from './data/jump-crawl'
 import { PUSH_PULL } from './data/push-pull'
 import { SQUAT_LUNGE } from './data/squat-lunge'
+import { STEPPING } from './data/stepping'
 import { WARM_UP } from './data/warm-up'
 import type { FigureSlug } from './slugs'
 import type { FigureData } from './types'
@@ -11,6 +13,8 @@ import type { FigureData } from './types'
 export const FIGURES: Record<FigureSlug, FigureData> = {
   ...WARM_UP,
   ...SQUAT_LUNGE,
+  ...STEPPING,
+  ...JUMP_CRAWL,
   ...HINGE,
   ...PUSH_PULL,
   ...CARRY,

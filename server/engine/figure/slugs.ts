@@ -16,6 +16,7 @@ export const FIGURE_SLUGS = [
   'mountain-climber',
   'incline-mountain-climber',
   'burpee-step-back',
+  'pogo-hop',
   // Squat
   'squat',
   'goblet-squat',
@@ -28,9 +29,11 @@ export const FIGURE_SLUGS = [
   // Lunge
   'reverse-lunge',
   'supported-lunge',
+  'forward-lunge',
   'split-squat',
   'rear-foot-raised-split-squat',
   'step-up',
+  'kneel-to-stand',
   // Hinge
   'hip-hinge',
   'romanian-deadlift',
@@ -40,6 +43,7 @@ export const FIGURE_SLUGS = [
   'kettlebell-swing',
   'glute-bridge',
   'single-leg-bridge',
+  'hip-thrust',
   // Push
   'push-up',
   'incline-push-up',

@@ -27,6 +27,18 @@ const bridgeUp: KeyPose = {
   arms: bridgeArms,
 }
 
+/** Shoulder blades on the edge of a seat, the weight held where legs and trunk meet. */
+const thrust = (
+  hips: readonly [number, number],
+  lean: number,
+  nod: number,
+  weight: readonly [number, number, number],
+): KeyPose => ({
+  body: { at: hips, lean, nod },
+  legs: { plant: { sole: [0.5, 0] } },
+  arms: { hand: weight, elbowTowards: 200, elbowOut: 1 },
+})
+
 export const HINGE = {
   'hip-hinge': {
     description:
@@ -144,6 +156,20 @@ export const HINGE = {
         1.4,
         { part: 'down', end: 'top' },
       ),
+    ],
+  },
+  'hip-thrust': {
+    description:
+      'Shoulder blades on the edge of a bench, a dumbbell across the hips, the seat lifts until trunk and thighs are level.',
+    view: 'side',
+    kit: [
+      { kind: 'chair', x: -0.265, facing: 'right' },
+      { kind: 'mat', from: -0.02, to: 0.62 },
+      { kind: 'dumbbell', hand: 'near', hold: 'end-on' },
+    ],
+    keys: [
+      key(thrust([0.165, 0.118], -42, 14, [0.228, 0.207, 0.04]), 1, { part: 'up', end: 'bottom' }),
+      key(thrust([0.25, 0.295], -88, 34, [0.255, 0.392, 0.04]), 1.6, { part: 'down', end: 'top' }),
     ],
   },
 } satisfies Record<string, FigureData>
