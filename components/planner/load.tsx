@@ -24,15 +24,15 @@ export function Load({
   const titleOf = (id: string) => spec.blocks.find((block) => block.id === id)?.title ?? id
   return (
     <div className="mt-3 space-y-4">
-      <table className="w-full text-left leading-snug">
+      <table className="w-full text-left leading-snug max-sm:text-[0.92em]">
         <thead className="text-[0.9em] text-text-quiet">
           <tr>
             <th className="pb-1 font-normal">Pattern</th>
             <th className="pb-1 font-normal max-sm:hidden">
               <span className="sr-only">this class, as a bar</span>
             </th>
-            <th className="pb-1 pl-3 text-right font-normal">here</th>
-            <th className="pb-1 pl-3 text-right font-normal">last 4 weeks</th>
+            <th className="pb-1 pl-2 text-right font-normal sm:pl-3">here</th>
+            <th className="pb-1 pl-2 text-right font-normal sm:pl-3">last 4 weeks</th>
           </tr>
         </thead>
         <tbody>
@@ -45,10 +45,10 @@ export function Load({
                   style={{ width: `${(one.reps / most) * 100}%` }}
                 />
               </td>
-              <td className="py-1.5 pl-3 text-right font-semibold whitespace-nowrap tabular-nums">
+              <td className="py-1.5 pl-2 text-right font-semibold whitespace-nowrap tabular-nums sm:pl-3">
                 {amount(one)}
               </td>
-              <td className="py-1.5 pl-3 text-right whitespace-nowrap tabular-nums">
+              <td className="py-1.5 pl-2 text-right whitespace-nowrap tabular-nums sm:pl-3">
                 {amount(weeks.patterns.find((other) => other.pattern === one.pattern))}
               </td>
             </tr>

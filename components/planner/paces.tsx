@@ -48,14 +48,14 @@ export function Paces({ version, learnt }: { version: PublishedVersion; learnt: 
   return (
     <div className="mt-3 space-y-3">
       {shown.length > 0 ? (
-        <table className="w-full text-left leading-snug">
+        <table className="w-full text-left leading-snug max-sm:text-[0.92em]">
           <thead className="text-[0.9em] text-text-quiet">
             <tr>
               <th className="pb-1 font-normal">Movement</th>
-              <th className="pb-1 pl-3 text-right font-normal">planned</th>
-              <th className="pb-1 pl-3 text-right font-normal">seen</th>
-              <th className="pb-1 pl-3 text-right font-normal">rests on</th>
-              <th className="pb-1 pl-3 text-right font-normal">was off by</th>
+              <th className="pb-1 pl-2 text-right font-normal sm:pl-3">planned</th>
+              <th className="pb-1 pl-2 text-right font-normal sm:pl-3">seen</th>
+              <th className="pb-1 pl-2 text-right font-normal sm:pl-3">rests on</th>
+              <th className="pb-1 pl-2 text-right font-normal sm:pl-3">was off by</th>
             </tr>
           </thead>
           <tbody>
@@ -67,14 +67,14 @@ export function Paces({ version, learnt }: { version: PublishedVersion; learnt: 
                     {row.name}
                     <span className="block text-[0.9em] text-text-quiet">{row.option}</span>
                   </td>
-                  <td className="py-1.5 pl-3 text-right whitespace-nowrap tabular-nums">
+                  <td className="py-1.5 pl-2 text-right whitespace-nowrap tabular-nums sm:pl-3">
                     {seconds(row.plannedSeconds)}
                   </td>
-                  <td className="py-1.5 pl-3 text-right font-semibold whitespace-nowrap tabular-nums">
+                  <td className="py-1.5 pl-2 text-right font-semibold whitespace-nowrap tabular-nums sm:pl-3">
                     {seconds(pace.secondsPerRep)}
                   </td>
-                  <td className="py-1.5 pl-3 text-right tabular-nums">{pace.attempts}</td>
-                  <td className="py-1.5 pl-3 text-right whitespace-nowrap tabular-nums">
+                  <td className="py-1.5 pl-2 text-right tabular-nums sm:pl-3">{pace.attempts}</td>
+                  <td className="py-1.5 pl-2 text-right tabular-nums sm:pl-3">
                     {pace.medianErrorReps === null
                       ? 'not known'
                       : plural(Math.round(pace.medianErrorReps), 'rep')}
