@@ -45,10 +45,10 @@ export function Load({
                   style={{ width: `${(one.reps / most) * 100}%` }}
                 />
               </td>
-              <td className="py-1.5 pl-2 text-right font-semibold whitespace-nowrap tabular-nums sm:pl-3">
+              <td className="py-1.5 pl-2 text-right font-semibold tabular-nums sm:pl-3 sm:whitespace-nowrap">
                 {amount(one)}
               </td>
-              <td className="py-1.5 pl-2 text-right whitespace-nowrap tabular-nums sm:pl-3">
+              <td className="py-1.5 pl-2 text-right tabular-nums sm:pl-3 sm:whitespace-nowrap">
                 {amount(weeks.patterns.find((other) => other.pattern === one.pattern))}
               </td>
             </tr>
