@@ -105,6 +105,10 @@ function Station({
           <strong className="block">{name}</strong>
           <span className="text-text-quiet">{stationText(station)}</span>
         </p>
+        <dl className="grid gap-x-6 gap-y-1 lg:grid-cols-[6fr_5fr]">
+          <Ways key="easier" digit="1" word="Easier" names={easier} />
+          <Ways key="harder" digit="3" word="Harder" names={harder} />
+        </dl>
         {fitted && (fitted.why !== null || fitted.conflicts.length > 0) ? (
           <div className="space-y-1 xl:col-span-2">
             {fitted.why ? (
@@ -117,10 +121,6 @@ function Station({
             ))}
           </div>
         ) : null}
-        <dl className="grid gap-x-6 gap-y-1 lg:grid-cols-[6fr_5fr]">
-          <Ways key="easier" digit="1" word="Easier" names={easier} />
-          <Ways key="harder" digit="3" word="Harder" names={harder} />
-        </dl>
       </div>
     </li>
   )
