@@ -278,7 +278,7 @@ export const hingeMovements: Movement[] = [
     sides: 'together',
     tempo: [2, 1, 1, 0],
     change: 5,
-    figure: 'suitcase-deadlift',
+    figure: 'kettlebell-deadlift',
     start: 'Kettlebell on the floor between your heels, feet a little wider than the hips.',
     steps: [
       'Hips back until both hands reach the handle, back long.',
@@ -360,7 +360,7 @@ export const hingeMovements: Movement[] = [
         'Deadlift instead',
         ['balance'],
         'The bell stays between the heels: lift it, set it down, no swing.',
-        { figure: 'suitcase-deadlift', tempo: [2, 0, 1, 0] },
+        { figure: 'kettlebell-deadlift', tempo: [2, 0, 1, 0] },
       ),
       planned('Two hands, to chest height.'),
       harder(
@@ -438,7 +438,7 @@ export const hingeMovements: Movement[] = [
     sides: 'together',
     tempo: [2, 0, 1, 1],
     change: 7,
-    figure: 'romanian-deadlift',
+    figure: 'band-deadlift',
     start: 'Stand on the middle of an undamaged band, both soles full on it, an end in each hand.',
     steps: [
       'Hips back, hands beside the knees, band just tight.',

@@ -252,7 +252,7 @@ export const jumpMovements: Movement[] = [
     sides: 'together',
     secondsPerRep: 5,
     change: 6,
-    figure: 'burpee-step-back',
+    figure: 'burpee',
     start: 'Stand with a body’s length of clear, dry floor behind you, feet hip-wide.',
     steps: [
       'Bend hips and knees and put both hands flat in front of the feet.',

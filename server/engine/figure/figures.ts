@@ -3,6 +3,7 @@ import { CORE_MOBILITY } from './data/core-mobility'
 import { HINGE } from './data/hinge'
 import { JUMP_CRAWL } from './data/jump-crawl'
 import { PUSH_PULL } from './data/push-pull'
+import { SIDEWAYS } from './data/sideways'
 import { SQUAT_LUNGE } from './data/squat-lunge'
 import { STEPPING } from './data/stepping'
 import { WARM_UP } from './data/warm-up'
@@ -14,6 +15,7 @@ export const FIGURES: Record<FigureSlug, FigureData> = {
   ...WARM_UP,
   ...SQUAT_LUNGE,
   ...STEPPING,
+  ...SIDEWAYS,
   ...JUMP_CRAWL,
   ...HINGE,
   ...PUSH_PULL,

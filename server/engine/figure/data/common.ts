@@ -1,7 +1,7 @@
 /** Positions that many figures begin from. */
 import { ANKLE_HEIGHT, SHANK, THIGH } from '../body'
 import { SEAT_HEIGHT } from '../furniture'
-import type { ArmPose, BodyPose, Key, KeyPose, LegPose } from '../types'
+import type { ArmPose, BodyPose, Key, KeyPose, LegPose, Plant, Point } from '../types'
 
 /** Hips of a person standing, knees not quite locked. */
 export const STANDING_HIPS = THIGH + SHANK + ANKLE_HEIGHT - 0.004
@@ -44,6 +44,30 @@ export function otherSide(pose: KeyPose): KeyPose {
     ...(nearLeg ? { farLeg: nearLeg } : {}),
     ...(farArm ? { nearArm: farArm } : {}),
     ...(nearArm ? { farArm: nearArm } : {}),
+  }
+}
+
+const mirrored = ([x, y, z]: Point): Point => (z === undefined ? [x, y] : [x, y, -z])
+const mirroredPlant = (plant: Plant): Plant => {
+  if ('sole' in plant) return { sole: mirrored(plant.sole) }
+  if ('toes' in plant) return { ...plant, toes: mirrored(plant.toes) }
+  return plant
+}
+
+/** As `otherSide`, for a front view whose body also shifts and tips sideways. */
+export function otherSideFront(pose: KeyPose): KeyPose {
+  const { nearLeg, farLeg, body, ...rest } = otherSide(pose)
+  const leg = (its: LegPose): LegPose =>
+    its.plant ? { ...its, plant: mirroredPlant(its.plant) } : its
+  return {
+    ...rest,
+    body: {
+      ...body,
+      ...(body.at ? { at: mirrored(body.at) } : {}),
+      ...(body.tilt === undefined ? {} : { tilt: -body.tilt }),
+    },
+    ...(nearLeg ? { nearLeg: leg(nearLeg) } : {}),
+    ...(farLeg ? { farLeg: leg(farLeg) } : {}),
   }
 }
 

@@ -112,6 +112,32 @@ export const HINGE = {
       ),
     ],
   },
+  'kettlebell-deadlift': {
+    description:
+      'A kettlebell on the floor between the feet is lifted in both hands by standing up, back flat, and set down again.',
+    view: 'side',
+    kit: [{ kind: 'kettlebell', hand: 'near' }],
+    keys: [
+      key(withArms(standing, { hand: [0.05, 0.452, 0.03] }), 2, { part: 'down', end: 'top' }),
+      key(withArms(onFeet(68, -12, 58, { nod: -18 }), { hand: [0.056, 0.158, 0.03] }), 1.2, {
+        part: 'up',
+        end: 'bottom',
+      }),
+    ],
+  },
+  'band-deadlift': {
+    description:
+      'Standing on a band with an end in each hand, the hips travel back with a flat back, then stand tall against the pull.',
+    view: 'side',
+    kit: [{ kind: 'band', from: [0.035, 0.012], hand: 'both' }],
+    keys: [
+      key(withArms(standing, { upper: 4, forearm: 6 }), 2, { part: 'down', end: 'top' }),
+      key(withArms(onFeet(44, -8, 58, { nod: -14 }), { upper: -14, forearm: -12 }), 1.3, {
+        part: 'up',
+        end: 'bottom',
+      }),
+    ],
+  },
   'dumbbell-swing': {
     description:
       'One dumbbell held in both hands swings from between the legs to chest height by a snap of the hips.',

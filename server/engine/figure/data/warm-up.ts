@@ -4,6 +4,7 @@ import {
   HANDS_ON_HIPS,
   key,
   otherSide,
+  otherSideFront,
   SITTING,
   SITTING_CHAIR,
   STAND,
@@ -288,24 +289,3 @@ export const WARM_UP = {
     still: 5,
   },
 } satisfies Record<string, FigureData>
-
-/** As `otherSide`, for a front view whose body also shifts sideways. */
-function otherSideFront(pose: KeyPose): KeyPose {
-  const turned = otherSide(pose)
-  const mirror = (leg: KeyPose['nearLeg']): KeyPose['nearLeg'] =>
-    leg?.plant && 'sole' in leg.plant
-      ? {
-          ...leg,
-          plant: { sole: [leg.plant.sole[0], leg.plant.sole[1], -(leg.plant.sole[2] ?? 0)] },
-        }
-      : leg
-  const at = turned.body.at
-  const nearLeg = mirror(turned.nearLeg)
-  const farLeg = mirror(turned.farLeg)
-  return {
-    ...turned,
-    body: { ...turned.body, ...(at ? { at: [at[0], at[1], -(at[2] ?? 0)] as const } : {}) },
-    ...(nearLeg ? { nearLeg } : {}),
-    ...(farLeg ? { farLeg } : {}),
-  }
-}
