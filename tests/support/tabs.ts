@@ -54,8 +54,11 @@ export async function openTabs(origin: string, cookie: string): Promise<Tabs> {
       context,
       async close() {
         // Disconnecting alone would leave it running; killed, it would still write to its profile.
-        const session = await browser.newBrowserCDPSession()
-        await session.send('Browser.close').catch(() => undefined)
+        await browser
+          .newBrowserCDPSession()
+          .then((session) => session.send('Browser.close'))
+          // Where it is gone already, what it was gone of is the error to be told.
+          .catch(() => undefined)
         await end()
       },
     }
